@@ -1,0 +1,92 @@
+import { z } from 'zod';
+import { Digest, Measured, Uuid } from './common';
+import { FLAG_CODES } from './edit';
+
+/**
+ * What is computed from a run, its edits and its rig. Never typed in. Two devices that analyse the
+ * same inputs with the same method print the same digits.
+ */
+
+export const Flag = z.strictObject({
+  code: z.enum(FLAG_CODES),
+  /** Index into the raw marks the flag is about, or null for the whole run. */
+  mark: z.int().min(0).nullable(),
+  /** What was seen, for the message: seconds, counts and ratios by name. */
+  seen: z.record(z.string(), z.number()),
+  /** Edits that would answer it, best first, as kinds of EditChange plus 'keep_flagged'. */
+  choices: z.array(z.enum(['leave_out_mark', 'insert_gap', 'reread_as_half_swings', 'set_swings', 'keep_flagged'])),
+  /** True once an edit answers it. */
+  answered: z.boolean(),
+});
+export type Flag = z.infer<typeof Flag>;
+
+/** One mark as it stands after the edits. */
+export const MarkRow = z.strictObject({
+  /** Index into the raw marks or blocks. */
+  mark: z.int().min(0),
+  /** Swings since the first mark in force; null when left out. */
+  swing: z.number().nullable(),
+  time_s: z.number(),
+  /** Lap to the mark before it that is in force, s. */
+  lap_s: z.number().nullable(),
+  /** Observed minus calculated, s; null when left out or when nothing could be fitted. */
+  residual_s: z.number().nullable(),
+});
+export type MarkRow = z.infer<typeof MarkRow>;
+
+export const BudgetLine = z.strictObject({
+  term: z.enum(['timing', 'reading', 'hand', 'clock', 'amplitude', 'decay', 'length']),
+  type: z.enum(['A', 'B']),
+  /** Standard uncertainty it brings to the result, s for T0, m/s² for g. */
+  u: z.number().min(0),
+  /** Degrees of freedom; null is infinite. */
+  dof: z.number().positive().nullable(),
+});
+export type BudgetLine = z.infer<typeof BudgetLine>;
+
+/** A result with what is needed to state it: U = coverage_factor × u covers 95 %. */
+export const Result = Measured.extend({
+  dof: z.number().positive().nullable(),
+  coverage_factor: z.number().positive(),
+  expanded_u: z.number().min(0),
+});
+export type Result = z.infer<typeof Result>;
+
+export const MISSING = ['marks', 'amplitude', 'end_amplitude', 'length', 'swings'] as const;
+
+export const Analysis = z.strictObject({
+  run_id: Uuid,
+  /** Digest of raw run, edits in force and method: the key of this analysis. */
+  input_digest: Digest,
+  /** Name and version of the method, e.g. 'line-1'. */
+  method: z.string().max(40),
+  /** Whole swings or parts of one between first and last mark in force; null if not known. */
+  swings: z.number().nullable(),
+  marks_used: z.int().min(0),
+  /** Measured period: mean over the run, not corrected. */
+  period_s: Result.nullable(),
+  /** Small-amplitude period: corrected for amplitude and its decay. */
+  small_period_s: Result.nullable(),
+  /** T/T0 over the run, and the amplitudes it was taken over. */
+  amplitude: z
+    .strictObject({
+      ratio: z.number().min(1),
+      start_deg: Measured,
+      end_deg: Measured,
+      /** False when only one amplitude was read and no decay could be allowed for. */
+      decay_known: z.boolean(),
+    })
+    .nullable(),
+  /** s.d. of the residuals, s, and their lag-1 correlation. */
+  jitter_s: z.number().min(0).nullable(),
+  lag1: z.number().min(-1).max(1).nullable(),
+  length_m: Measured.nullable(),
+  g_m_s2: Result.nullable(),
+  budget: z.array(BudgetLine),
+  g_budget: z.array(BudgetLine),
+  flags: z.array(Flag),
+  marks: z.array(MarkRow),
+  /** What is not there and would bring more: in the order a person should give it. */
+  missing: z.array(z.enum(MISSING)),
+});
+export type Analysis = z.infer<typeof Analysis>;

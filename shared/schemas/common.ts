@@ -1,0 +1,19 @@
+import { z } from 'zod';
+import { MAX_BENCH, MAX_NOTE, MAX_RUN_US } from './limits';
+
+/** Building blocks of every format. Objects are strict everywhere: an unknown field is refused. */
+
+export const Uuid = z.uuid();
+export const Digest = z.string().regex(/^[0-9a-f]{64}$/, 'a SHA-256 digest has 64 hexadecimal digits');
+/** Milliseconds since 1970, as the device's wall clock said. A fact about the device, never an order. */
+export const WallMs = z.int().min(0).max(8_640_000_000_000_000);
+/** Microseconds since the first mark of the run. */
+export const RunUs = z.int().min(0).max(MAX_RUN_US);
+/** Microseconds from the first mark; negative before it. */
+export const SignedRunUs = z.int().min(-MAX_RUN_US).max(MAX_RUN_US);
+export const Bench = z.int().min(1).max(MAX_BENCH);
+export const Note = z.string().trim().max(MAX_NOTE);
+
+/** A number with its standard uncertainty, both in the unit the field's name says. */
+export const Measured = z.strictObject({ value: z.number(), u: z.number().min(0) });
+export type Measured = z.infer<typeof Measured>;
