@@ -1,0 +1,20 @@
+import '@fontsource/nunito-sans/latin-400.css';
+import '@fontsource/nunito-sans/latin-700.css';
+import '@fontsource/nunito-sans/latin-800.css';
+import 'quasar/src/css/index.sass';
+import '@/css/tokens.css';
+import '@/css/app.css';
+import { createPinia } from 'pinia';
+import { Quasar } from 'quasar';
+import iconSet from 'quasar/icon-set/svg-material-icons-sharp';
+import { createApp } from 'vue';
+import App from '@/App.vue';
+import { i18n } from '@/i18n';
+import { router } from '@/router';
+
+createApp(App)
+  .use(createPinia())
+  .use(Quasar, { iconSet, config: { ripple: false } })
+  .use(i18n)
+  .use(router)
+  .mount('#app');
