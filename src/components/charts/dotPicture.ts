@@ -1,0 +1,126 @@
+import type { Brush, Picture } from '@/composables/useChart';
+import type { BenchDot, DotSummary, Lane } from './dotPlot';
+import { benchShape, shapePath } from './markers';
+import { paintLine, paintMarker } from './paint';
+
+/** Sizes at 1080 lines, px: read from ten metres. */
+const TICK = 30;
+const NAME = 34;
+const MARKER = 11;
+const BAR = 3;
+const LINE = 4;
+
+interface Words {
+  x: string;
+  y: string;
+  /** A period at this tick step, s. */
+  tick: (period_s: number, step_s: number) => string;
+  /** A period that stands beyond the picture. */
+  beyond: (dot: BenchDot) => string;
+}
+
+/** One lane a bench, bench 1 on top; T0 along the foot. `scale` is 1 at 1080 lines. */
+export function dotPicture(summary: DotSummary, words: Words, size: { height: number }, scale: number): Picture {
+  const { lanes } = summary;
+  const laneHeight = (size.height - 3.6 * NAME * scale) / lanes.length;
+  const laneType = Math.min(TICK * scale, laneHeight * 0.82);
+  const place = (lane: number) => lanes.length - lane;
+  return {
+    x: {
+      range: summary.range_s,
+      label: words.x,
+      tick_px: TICK * scale,
+      name_px: NAME * scale,
+      size_px: TICK * scale * 1.9,
+      grid: true,
+      space_px: TICK * scale * 4.5,
+      tickText: words.tick,
+    },
+    y: {
+      range: [0.4, lanes.length + 0.6],
+      label: words.y,
+      tick_px: laneType,
+      name_px: NAME * scale,
+      size_px: TICK * scale * 1.9,
+      grid: false,
+      space_px: 1,
+      ticks: lanes.map((_, i) => place(i)).reverse(),
+      tickText: (tick) => String(lanes[place(tick)]?.bench ?? ''),
+    },
+    paint: (brush) => {
+      paintMiddle(brush, summary, scale);
+      const marker = Math.min(MARKER * scale, laneHeight * 0.36);
+      lanes.forEach((lane, i) =>
+        paintLane(brush, lane, brush.y(place(i)), { marker, scale, type: laneType }, summary, words),
+      );
+    },
+  };
+}
+
+function paintMiddle(brush: Brush, { low_s, high_s, median_s }: DotSummary, scale: number): void {
+  const { context, theme, top, height } = brush;
+  context.save();
+  context.globalAlpha = 0.14;
+  context.fillStyle = theme.brass;
+  context.fillRect(brush.x(low_s), top, brush.x(high_s) - brush.x(low_s), height);
+  context.restore();
+  const x = brush.x(median_s);
+  paintLine(brush, [x, top], [x, top + height], { colour: theme.brass, width_px: LINE * scale });
+}
+
+interface LaneSizes {
+  marker: number;
+  scale: number;
+  type: number;
+}
+
+function paintLane(brush: Brush, lane: Lane, y: number, sizes: LaneSizes, summary: DotSummary, words: Words): void {
+  const { theme, left, width } = brush;
+  const colour = theme.series[(lane.bench - 1) % theme.series.length]!;
+  paintLine(brush, [left, y], [left + width, y], { colour: theme.line, width_px: 1 });
+  for (const dot of lane.dots) {
+    if (summary.beyond.includes(dot)) paintBeyond(brush, dot, y, colour, sizes, words);
+    else paintDot(brush, dot, y, colour, sizes);
+  }
+}
+
+function paintDot(brush: Brush, dot: BenchDot, y: number, colour: string, { marker, scale }: LaneSizes): void {
+  const { px, left, width } = brush;
+  const stroke = { colour, width_px: Math.max(1.5, BAR * scale) };
+  const from = Math.max(left, brush.x(dot.period_s - 2 * dot.u_s));
+  const to = Math.min(left + width, brush.x(dot.period_s + 2 * dot.u_s));
+  paintLine(brush, [from, y], [to, y], stroke);
+  for (const end of [from, to]) {
+    if (end > left && end < left + width)
+      paintLine(brush, [end, y - px(marker * 0.7)], [end, y + px(marker * 0.7)], stroke);
+  }
+  paintMarker(brush, shapePath(benchShape(dot.bench), marker), brush.x(dot.period_s), y, colour);
+}
+
+/** Too far out for the picture: an arrow at the edge, with the number it stands for. */
+function paintBeyond(
+  brush: Brush,
+  dot: BenchDot,
+  y: number,
+  colour: string,
+  { marker, type }: LaneSizes,
+  words: Words,
+): void {
+  const { context, theme, px, left, width } = brush;
+  const isRight = brush.x(dot.period_s) > left;
+  const tip = isRight ? left + width - px(2) : left + px(2);
+  const inward = isRight ? -1 : 1;
+  context.save();
+  context.fillStyle = colour;
+  context.beginPath();
+  context.moveTo(tip, y);
+  context.lineTo(tip + inward * px(marker * 1.8), y - px(marker));
+  context.lineTo(tip + inward * px(marker * 1.8), y + px(marker));
+  context.fill();
+  context.fillStyle = theme.ink;
+  context.font = `${px(type)}px ${theme.font}`;
+  context.textBaseline = 'middle';
+  context.textAlign = isRight ? 'right' : 'left';
+  context.fillText(words.beyond(dot), tip + inward * px(marker * 2.6), y);
+  context.restore();
+}

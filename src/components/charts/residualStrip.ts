@@ -1,0 +1,84 @@
+import type { Analysis } from '@shared/schemas/analysis';
+import type { FlagCode } from '@shared/schemas/edit';
+import type { Shape } from './markers';
+
+/** One mark on the observed-minus-calculated strip. */
+export interface StripPoint {
+  mark: number;
+  /** Swings since the first mark; for a mark left out, where it would stand. */
+  swing: number;
+  time_s: number;
+  lap_s: number | null;
+  residual_ms: number | null;
+  isLeftOut: boolean;
+  /** Codes of the flags about this very mark. */
+  flags: FlagCode[];
+  isFlagOpen: boolean;
+}
+
+/** A message key with the numbers it names. */
+export interface Finding {
+  key: string;
+  named: Record<string, number>;
+}
+
+/** Shape that stands for a flag at its mark, in the picture and beside its words. */
+export const FLAG_SHAPES: Record<FlagCode, Shape> = {
+  double: 'diamond',
+  missed: 'square',
+  late_first_mark: 'triangle',
+  half_swings: 'plus',
+  count_from_one: 'star',
+  clock_gap: 'cross',
+  cut_short: 'ring',
+};
+
+export function stripPoints(analysis: Analysis): StripPoint[] {
+  const inForce = analysis.marks.filter((row) => row.swing !== null);
+  return analysis.marks.map((row) => {
+    const flags = analysis.flags.filter((flag) => flag.mark === row.mark);
+    return {
+      mark: row.mark,
+      swing: row.swing ?? placeOf(row.time_s, inForce),
+      time_s: row.time_s,
+      lap_s: row.lap_s,
+      residual_ms: row.residual_s === null ? null : row.residual_s * 1000,
+      isLeftOut: row.swing === null,
+      flags: flags.map((flag) => flag.code),
+      isFlagOpen: flags.some((flag) => !flag.answered),
+    };
+  });
+}
+
+/** What the strip shows, in one sentence. */
+export function stripFinding(analysis: Analysis): Finding {
+  const points = stripPoints(analysis).filter((point) => point.residual_ms !== null);
+  if (points.length === 0 || analysis.jitter_s === null) return { key: 'run.strip.nothing', named: {} };
+  const jitter_ms = Math.round(analysis.jitter_s * 1000);
+  const worst = points.reduce((a, b) => (Math.abs(b.residual_ms!) > Math.abs(a.residual_ms!) ? b : a));
+  const named = { marks: points.length, jitter_ms };
+  if (Math.abs(worst.residual_ms!) <= OUTSIDE_BAND * analysis.jitter_s * 1000) return { key: 'run.strip.even', named };
+  return {
+    key: worst.residual_ms! > 0 ? 'run.strip.late' : 'run.strip.early',
+    named: { ...named, mark: worst.mark, off_ms: Math.round(Math.abs(worst.residual_ms!)) },
+  };
+}
+
+/** Half height of the strip, ms: holds every residual and the ±2 s.d. band, with room to spare. */
+export function stripReach_ms(points: StripPoint[], jitter_s: number | null): number {
+  const largest = Math.max(0, ...points.map((point) => Math.abs(point.residual_ms ?? 0)));
+  return 1.15 * Math.max(largest, 2.4 * (jitter_s ?? 0) * 1000, 5);
+}
+
+/** Beyond so many s.d. a mark is worth naming: one good mark in a hundred lies out there. */
+const OUTSIDE_BAND = 2.6;
+
+/** Where a mark that is left out would stand, from the two marks in force nearest to it. */
+function placeOf(time_s: number, inForce: Analysis['marks']): number {
+  const after = inForce.findIndex((row) => row.time_s >= time_s);
+  const at = after === -1 ? inForce.length - 1 : Math.max(after, 1);
+  const [left, right] = [inForce[at - 1], inForce[at]];
+  if (!left || !right) return inForce[0]?.swing ?? 0;
+  const share = (time_s - left.time_s) / (right.time_s - left.time_s);
+  return left.swing! + share * (right.swing! - left.swing!);
+}

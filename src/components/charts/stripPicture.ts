@@ -1,0 +1,84 @@
+import type { Brush, Picture } from '@/composables/useChart';
+import type { ChartTheme } from '@/composables/chartTheme';
+import { paintLine, paintMarker } from './paint';
+import { shapePath } from './markers';
+import { FLAG_SHAPES, stripReach_ms, type StripPoint } from './residualStrip';
+
+interface Strip {
+  points: StripPoint[];
+  jitter_s: number | null;
+  /** Place in `points` of the mark the reader stands on. */
+  chosen: number | null;
+}
+
+/** The residual strip, ready for useChart. */
+export function stripPicture(
+  strip: Strip,
+  names: { x: string; y: string },
+  size: { width: number },
+  theme: ChartTheme,
+): Picture {
+  const reach = stripReach_ms(strip.points, strip.jitter_s);
+  const swings = strip.points.map((point) => point.swing);
+  const last = Math.max(1, ...swings);
+  const type = { tick_px: theme.rem * 0.8, name_px: theme.rem * 0.8 };
+  return {
+    x: {
+      ...type,
+      range: [Math.min(0, ...swings) - last * 0.03, last * 1.03],
+      label: names.x,
+      size_px: theme.rem * 1.8,
+      grid: false,
+      tickText: (tick) => String(Math.round(tick * 100) / 100),
+    },
+    y: {
+      ...type,
+      range: [-reach, reach],
+      label: names.y,
+      size_px: theme.rem * 2.9,
+      grid: true,
+      // A true minus sign, and no grouping.
+      tickText: (tick) => (tick < 0 ? `−${-tick}` : String(tick)),
+    },
+    paint: (brush) => {
+      paintBand(brush, strip.jitter_s);
+      const radius = Math.min(5, Math.max(2.2, size.width / strip.points.length / 3));
+      strip.points.forEach((point, i) => paintPoint(brush, point, radius, i === strip.chosen));
+    },
+  };
+}
+
+function paintBand(brush: Brush, jitter_s: number | null): void {
+  const { context, theme, left, width } = brush;
+  if (jitter_s !== null) {
+    const [top, bottom] = [brush.y(2000 * jitter_s), brush.y(-2000 * jitter_s)];
+    context.save();
+    context.globalAlpha = 0.1;
+    context.fillStyle = theme.series[0]!;
+    context.fillRect(left, top, width, bottom - top);
+    context.restore();
+    for (const edge of [top, bottom]) {
+      paintLine(brush, [left, edge], [left + width, edge], { colour: theme.soft, width_px: 1, dash_px: [3, 4] });
+    }
+  }
+  paintLine(brush, [left, brush.y(0)], [left + width, brush.y(0)], { colour: theme.ink, width_px: 1.5 });
+}
+
+function paintPoint(brush: Brush, point: StripPoint, radius: number, isChosen: boolean): void {
+  const { theme } = brush;
+  const x = brush.x(point.swing);
+  // A mark left out has no residual: it stands on the foot of the strip, struck through.
+  const y = point.residual_ms === null ? brush.top + brush.height - brush.px(9) : brush.y(point.residual_ms);
+  if (isChosen) {
+    paintLine(brush, [x, brush.top], [x, brush.top + brush.height], { colour: theme.brass, width_px: 1.5 });
+    paintMarker(brush, shapePath('ring', radius + 6), x, y, theme.brass);
+  }
+  if (point.isLeftOut) return paintMarker(brush, shapePath('cross', radius), x, y, theme.soft);
+  paintMarker(brush, shapePath('circle', radius), x, y, theme.series[0]!);
+  point.flags.forEach((code, i) => {
+    // Above its mark, or below when there is no room above.
+    const room = y - brush.top > brush.px(18) ? -1 : 1;
+    const away = room * brush.px(13 + 12 * i);
+    paintMarker(brush, shapePath(FLAG_SHAPES[code], 5.5), x, y + away, point.isFlagOpen ? theme.alarm : theme.soft);
+  });
+}
