@@ -7,8 +7,10 @@ import '@/css/app.css';
 import { createPinia } from 'pinia';
 import { Quasar } from 'quasar';
 import iconSet from 'quasar/icon-set/svg-material-icons-sharp';
+import { registerSW } from 'virtual:pwa-register';
 import { createApp } from 'vue';
 import App from '@/App.vue';
+import { beginAppUpdate } from '@/composables/useAppUpdate';
 import { i18n } from '@/i18n';
 import { router } from '@/router';
 
@@ -18,3 +20,5 @@ createApp(App)
   .use(i18n)
   .use(router)
   .mount('#app');
+
+beginAppUpdate(registerSW);

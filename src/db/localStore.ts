@@ -101,8 +101,15 @@ export class LocalStore extends Dexie {
   /** cursor, server_epoch, created_seq, last rig, last contact … */
   meta!: EntityTable<MetaRow, 'key'>;
 
-  constructor(readonly owner: string) {
-    super(`swaymark-${owner}`);
+  /**
+   * @param owner       whose store: see {@link ownerKey}
+   * @param durability  relaxed: the system has it when a write resolves; strict: the disk has it
+   */
+  constructor(
+    readonly owner: string,
+    durability: 'relaxed' | 'strict' = 'relaxed',
+  ) {
+    super(`swaymark-${owner}`, { chromeTransactionDurability: durability });
     this.version(1).stores({
       recordings: 'id, state',
       recordingEvents: '[recording_id+seq], recording_id',
@@ -114,6 +121,25 @@ export class LocalStore extends Dexie {
       meta: 'key',
     });
   }
+}
+
+const strictTwins = new WeakMap<LocalStore, LocalStore>();
+
+/**
+ * A second connection to the same store whose writes resolve only once they are flushed to disk:
+ * for sealing, where a tap's few milliseconds do not matter and power loss does.
+ */
+export function strictly(store: LocalStore): LocalStore {
+  const twin = strictTwins.get(store) ?? new LocalStore(store.owner, 'strict');
+  strictTwins.set(store, twin).set(twin, twin);
+  return twin;
+}
+
+/** Closes both connections. */
+export function closeStore(store: LocalStore): void {
+  strictTwins.get(store)?.close();
+  strictTwins.delete(store);
+  store.close();
 }
 
 /** Name of an account's store: 'guest' while nobody is signed in. */

@@ -1,8 +1,25 @@
 import { createRouter, createWebHistory } from 'vue-router';
+import { useSession } from '@/stores/useSession';
 import { routes } from './routes';
 
 export const router = createRouter({
   history: createWebHistory(),
   routes,
   scrollBehavior: (_to, _from, saved) => saved ?? { top: 0 },
+});
+
+/** The server decides who may do what; this only spares people a page they could not use. */
+router.beforeEach(async (to) => {
+  const { needs } = to.meta;
+  if (!needs) return true;
+  const session = useSession();
+  await session.ready;
+  if (!session.isStaff) return { name: 'signIn', query: { to: to.fullPath } };
+  return needs === 'coordinator' && session.me?.kind !== 'coordinator' ? { name: 'desk' } : true;
+});
+
+/** Where the page begins for somebody who listens to it. */
+router.afterEach((to, from) => {
+  if (from.matched.length === 0 || to.path === from.path) return;
+  requestAnimationFrame(() => document.getElementById('main')?.focus({ preventScroll: true }));
 });

@@ -1,0 +1,101 @@
+import type { Analysis } from '@shared/schemas/analysis';
+import type { FeedAnswer, FeedItem } from '@shared/schemas/sync';
+import type { EditRow, LocalStore, RunRow, SendInfo } from './localStore';
+import { readMeta, writeMeta } from './meta';
+
+/** What comes back from the server. Applying the same answer twice leaves the store as once. */
+
+export async function feedCursor(store: LocalStore): Promise<number> {
+  return (await readMeta<number>(store, 'cursor')) ?? 0;
+}
+
+/**
+ * Writes a page of the feed and its cursor down, in one transaction.
+ *
+ * @returns true when the server's epoch changed: everything made here waits again, and the feed starts over
+ */
+export function applyFeed(store: LocalStore, answer: FeedAnswer): Promise<boolean> {
+  return store.transaction('rw', store.runs, store.edits, store.analyses, store.meta, async () => {
+    const changed = await followEpoch(store, answer.server_epoch);
+    for (const item of answer.items) await applyItem(store, item);
+    if (!changed) await writeMeta(store, 'cursor', answer.cursor);
+    return changed;
+  });
+}
+
+/** Notes which life of the server answered; see {@link applyFeed} for what a new one does. */
+export function noteEpoch(store: LocalStore, epoch: string): Promise<boolean> {
+  return store.transaction('rw', store.runs, store.edits, store.meta, () => followEpoch(store, epoch));
+}
+
+/** Analyses that came with an answer to a sync request; the feed will bring them again, with their number. */
+export function keepEarlyAnalyses(store: LocalStore, analyses: Analysis[]): Promise<void> {
+  return store.transaction('rw', store.analyses, async () => {
+    for (const analysis of analyses) {
+      const key: [string, string] = [analysis.run_id, analysis.input_digest];
+      if (await store.analyses.get(key)) continue;
+      await store.analyses.add({ run_id: key[0], input_digest: key[1], server_seq: 0, analysis });
+    }
+  });
+}
+
+/** A server put back from an older backup has a new epoch: it may lack what it once gave receipts for. */
+async function followEpoch(store: LocalStore, epoch: string): Promise<boolean> {
+  const known = await readMeta<string>(store, 'server_epoch');
+  if (known === epoch) return false;
+  await writeMeta(store, 'server_epoch', epoch);
+  if (known === undefined) return false;
+  const again = { state: 'waiting', receipt: null } as const;
+  const isMineReceived = (row: SendInfo) => row.origin === 'mine' && row.state === 'received';
+  await store.runs.filter(isMineReceived).modify(again);
+  await store.edits.filter(isMineReceived).modify(again);
+  await writeMeta(store, 'cursor', 0);
+  return true;
+}
+
+async function applyItem(store: LocalStore, item: FeedItem): Promise<void> {
+  if (item.type === 'run') await applyRun(store, item);
+  else if (item.type === 'edit') await applyEdit(store, item);
+  else
+    await store.analyses.put({
+      run_id: item.analysis.run_id,
+      input_digest: item.analysis.input_digest,
+      server_seq: item.seq,
+      analysis: item.analysis,
+    });
+}
+
+async function applyRun(store: LocalStore, item: Extract<FeedItem, { type: 'run' }>): Promise<void> {
+  const kept = await store.runs.get(item.id);
+  if (kept && kept.digest !== item.digest) return;
+  const row: RunRow = {
+    ...fromServer(item, kept),
+    id: item.id,
+    class_id: item.class_id,
+    bench: item.bench,
+    made_wall_ms: kept?.made_wall_ms ?? madeWallMs(item.raw),
+    clock_skew_ms: item.clock_skew_ms,
+  };
+  await store.runs.put(row);
+}
+
+async function applyEdit(store: LocalStore, item: Extract<FeedItem, { type: 'edit' }>): Promise<void> {
+  const kept = await store.edits.get(item.id);
+  if (kept && kept.digest !== item.digest) return;
+  const row: EditRow = { ...fromServer(item, kept), id: item.id, run_id: item.run_id };
+  await store.edits.put(row);
+}
+
+type Sent = Exclude<FeedItem, { type: 'analysis' }>;
+const fromServer = (item: Sent, kept: SendInfo | undefined): SendInfo & { digest: string; raw: string } => ({
+  state: 'received',
+  created_seq: kept?.created_seq ?? 0,
+  receipt: item.receipt,
+  refusal: null,
+  author: item.author,
+  origin: kept?.origin ?? 'feed',
+  digest: item.digest,
+  raw: item.raw,
+});
+
+const madeWallMs = (raw: string): number => (JSON.parse(raw) as { made: { wall_ms: number } }).made.wall_ms;

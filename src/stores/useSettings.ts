@@ -1,0 +1,34 @@
+import { defineStore } from 'pinia';
+import { reactive, toRefs, watch } from 'vue';
+import { savedSettings, saveSettings } from '@/db/appStore';
+
+export interface Settings {
+  theme: 'system' | 'light' | 'dark';
+  /** Which thumb reaches for undo. */
+  hand: 'left' | 'right';
+  haptics: boolean;
+  soundTick: boolean;
+  gloveMode: boolean;
+  decimalMark: '.' | ',';
+}
+
+const DEFAULTS: Settings = {
+  theme: 'system',
+  hand: 'right',
+  haptics: true,
+  soundTick: false,
+  gloveMode: false,
+  decimalMark: '.',
+};
+
+/** How this device is set. Kept on the device, for whoever uses it. */
+export const useSettings = defineStore('settings', () => {
+  const settings = reactive<Settings>({ ...DEFAULTS });
+
+  const ready = savedSettings().then((saved) => {
+    Object.assign(settings, saved);
+    watch(settings, () => void saveSettings({ ...settings }));
+  });
+
+  return { ...toRefs(settings), ready };
+});
