@@ -1,5 +1,5 @@
 import type { Brush, Picture } from '@/composables/useChart';
-import type { BenchDot, DotSummary, Lane } from './dotPlot';
+import type { BenchDot, BenchSummary, Lane } from '@shared/analysis/summariseBenches';
 import { benchShape, shapePath } from './markers';
 import { paintLine, paintMarker } from './paint';
 
@@ -20,7 +20,7 @@ interface Words {
 }
 
 /** One lane a bench, bench 1 on top; T0 along the foot. `scale` is 1 at 1080 lines. */
-export function dotPicture(summary: DotSummary, words: Words, size: { height: number }, scale: number): Picture {
+export function dotPicture(summary: BenchSummary, words: Words, size: { height: number }, scale: number): Picture {
   const { lanes } = summary;
   const laneHeight = (size.height - 3.6 * NAME * scale) / lanes.length;
   const laneType = Math.min(TICK * scale, laneHeight * 0.82);
@@ -57,7 +57,7 @@ export function dotPicture(summary: DotSummary, words: Words, size: { height: nu
   };
 }
 
-function paintMiddle(brush: Brush, { low_s, high_s, median_s }: DotSummary, scale: number): void {
+function paintMiddle(brush: Brush, { low_s, high_s, median_s }: BenchSummary, scale: number): void {
   const { context, theme, top, height } = brush;
   context.save();
   context.globalAlpha = 0.14;
@@ -74,7 +74,7 @@ interface LaneSizes {
   type: number;
 }
 
-function paintLane(brush: Brush, lane: Lane, y: number, sizes: LaneSizes, summary: DotSummary, words: Words): void {
+function paintLane(brush: Brush, lane: Lane, y: number, sizes: LaneSizes, summary: BenchSummary, words: Words): void {
   const { theme, left, width } = brush;
   const colour = theme.series[(lane.bench - 1) % theme.series.length]!;
   paintLine(brush, [left, y], [left + width, y], { colour: theme.line, width_px: 1 });

@@ -1,6 +1,6 @@
-import { quantile } from '@shared/statistics/quantile';
+import { quantile } from '../statistics/quantile';
 
-/** One run on the dot plot. `u` is its standard uncertainty; bars show twice that. */
+/** One run of a bench, with its standard uncertainty. */
 export interface BenchDot {
   id: string;
   bench: number;
@@ -16,7 +16,7 @@ export interface Lane {
   middle_s: number;
 }
 
-export interface DotSummary {
+export interface BenchSummary {
   lanes: Lane[];
   runs: number;
   /** Median of the benches, one vote each. */
@@ -25,13 +25,18 @@ export interface DotSummary {
   low_s: number;
   high_s: number;
   spreadIs: 'half' | 'all';
-  /** Picture's range; dots beyond it stand at the edge with an arrow and their number. */
+  /** Range for a picture, s; dots beyond it stand at the edge with an arrow and their number. */
   range_s: readonly [number, number];
   beyond: BenchDot[];
 }
 
-/** What a class's dots say together, or undefined while there is none. */
-export function summariseDots(dots: BenchDot[]): DotSummary | undefined {
+/**
+ * What the runs of a class say together: each bench has one vote, the median of its runs.
+ *
+ * @param dots  runs in any order; period and u in s
+ * @returns     undefined while there is no run
+ */
+export function summariseBenches(dots: BenchDot[]): BenchSummary | undefined {
   if (dots.length === 0) return undefined;
   const benches = [...new Set(dots.map((dot) => dot.bench))].sort((a, b) => a - b);
   const lanes = benches.map((bench) => {

@@ -1,0 +1,25 @@
+import { useI18n } from 'vue-i18n';
+import type { Measured } from '@shared/schemas/common';
+import type { AmplitudeReading } from '@shared/schemas/rig';
+import { formatMeasured, formatSeconds } from '@shared/units/formatMeasured';
+import { useSettings } from '@/stores/useSettings';
+
+/** Amplitudes in words: as computed, in degrees; and as read, in the unit they were read in. */
+export function useAmplitudeWords() {
+  const { t } = useI18n();
+  const settings = useSettings();
+  const options = () => ({ decimalMark: settings.decimalMark });
+
+  const degrees = ({ value, u }: Measured) => `${formatMeasured(value, u, options()).text}°`;
+
+  function readingWords({ swing, as_read }: AmplitudeReading): string {
+    const amplitude =
+      as_read.form === 'angle'
+        ? `${formatSeconds(as_read.mdeg / 1000, { places: 1, ...options() })}°`
+        : t('run.amplitude.sideways', {
+            sideways_cm: formatSeconds(as_read.sideways_um / 10_000, { places: 1, ...options() }),
+          });
+    return t('run.amplitude.at', { amplitude, swing });
+  }
+  return { degrees, readingWords };
+}

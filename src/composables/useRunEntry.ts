@@ -1,0 +1,40 @@
+import { computed, type Ref } from 'vue';
+import { useI18n } from 'vue-i18n';
+import { useRuns } from '@/stores/useRuns';
+
+/** One run of this device's store by its id, with the words of its head. It follows edits and receipts as they come. */
+export function useRunEntry(id: Ref<string>) {
+  const { t } = useI18n();
+  const runs = useRuns();
+  const entry = computed(() => runs.entry(id.value));
+
+  const made = computed(() => entry.value && madeAt(entry.value.raw.made));
+  const title = computed(() => (made.value ? t('run.title', { time: made.value.time }) : t('run.titleNotHere')));
+  const lead = computed(() => {
+    if (!entry.value || !made.value) return undefined;
+    const { row, raw } = entry.value;
+    const parts = [
+      t(`run.kind.${raw.capture.kind}`),
+      row.bench === null ? '' : t('common.bench', { n: row.bench }),
+      row.author?.name ?? '',
+      made.value.date,
+    ];
+    return parts.filter((part) => part !== '').join(' · ');
+  });
+  const chip = computed(() => {
+    const row = entry.value?.row;
+    return row?.refusal?.code === 'conflict' ? ('conflict' as const) : row?.state;
+  });
+  return { entry, isLoading: computed(() => !runs.isLoaded), title, lead, chip };
+}
+
+/** Day and time of the device that made the run, in its own zone at the time. */
+function madeAt(made: { wall_ms: number; zone_offset_min: number }): { time: string; date: string } {
+  const local = new Date(made.wall_ms + made.zone_offset_min * 60_000);
+  const part = (options: Intl.DateTimeFormatOptions) =>
+    new Intl.DateTimeFormat('en-GB', { timeZone: 'UTC', ...options }).format(local);
+  return {
+    time: part({ hour: '2-digit', minute: '2-digit' }),
+    date: part({ day: 'numeric', month: 'short', year: 'numeric' }),
+  };
+}
