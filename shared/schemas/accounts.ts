@@ -75,6 +75,7 @@ export const StaffMember = z.strictObject({
 });
 export type StaffMember = z.infer<typeof StaffMember>;
 export const PendingInvite = z.strictObject({ id: Uuid, email: z.string(), role: StaffRole, expires_wall_ms: WallMs });
+export type PendingInvite = z.infer<typeof PendingInvite>;
 /** `link` is given only when the server has no e-mail set up, for the coordinator to pass on by hand. */
 export const InviteAnswer = z.strictObject({ invite: PendingInvite, link: z.string().nullable() });
 export const NewPinAnswer = z.strictObject({ pin: Pin });

@@ -35,7 +35,7 @@ export async function boardPicture(
 ): Promise<{ head: BoardHead | null; points: BoardPoint[] }> {
   const head = (await readMeta<BoardHead>(store, `board:${pass}`)) ?? null;
   const rows = await store.boardPoints.where({ pass }).toArray();
-  return { head, points: rows.map(({ pass: _, ...point }) => point) };
+  return { head, points: rows.map(withoutPass) };
 }
 
 /** Lays an answer over the kept picture: new and changed points only, or all of them after a fresh start. */
@@ -45,4 +45,10 @@ export function keepBoard(store: LocalStore, pass: string, head: BoardHead, poin
     await store.boardPoints.bulkPut(points.map((point) => ({ ...point, pass })));
     await writeMeta(store, `board:${pass}`, head);
   });
+}
+
+function withoutPass(row: BoardPoint & { pass?: string }): BoardPoint {
+  const point = { ...row };
+  delete point.pass;
+  return point;
 }

@@ -2,14 +2,12 @@ import { defineStore } from 'pinia';
 import { shallowRef } from 'vue';
 import { ApiError } from '@/api/ApiError';
 import * as api from '@/api/people';
-import type { z } from 'zod';
-import type * as Accounts from '@shared/schemas/accounts';
-import type { StaffMember, StaffRole } from '@shared/schemas/accounts';
+import type { PendingInvite, StaffMember, StaffRole } from '@shared/schemas/accounts';
 
 /** The coordinator's list of staff and open invitations. Only from the server: nothing of it is kept here. */
 export const usePeople = defineStore('people', () => {
   const staff = shallowRef<StaffMember[]>([]);
-  const invites = shallowRef<z.infer<typeof Accounts.PendingInvite>[]>([]);
+  const invites = shallowRef<PendingInvite[]>([]);
   const error = shallowRef<ApiError | null>(null);
   const isLoading = shallowRef(false);
 

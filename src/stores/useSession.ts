@@ -3,7 +3,7 @@ import { computed, markRaw, shallowRef } from 'vue';
 import * as api from '@/api/accounts';
 import { ApiError } from '@/api/ApiError';
 import { noteSignOutOwed, owesSignOut, rememberedMe, rememberMe, watchRememberedMe } from '@/db/appStore';
-import { claimGuest } from '@/db/claimGuest';
+import { claimGuest, countGuestRuns } from '@/db/claimGuest';
 import { ownerKey, type LocalStore } from '@/db/localStore';
 import { askToKeep, openStoreOf } from '@/db/stores';
 import { withUploadLock } from '@/sync/uploadLock';
@@ -147,6 +147,7 @@ export const useSession = defineStore('session', () => {
     askForReset,
     resetPassword,
     lookUpClass,
+    countGuestRuns,
     signOut,
   };
 });
