@@ -1,0 +1,65 @@
+/** A straight line through points in order of time, with what the uncertainty of its slope needs. */
+export interface LineFit {
+  slope: number;
+  /** y of the line at x = 0. */
+  intercept: number;
+  /** By how much points of the odd kind lie above the others; 0 without kinds. */
+  offset: number;
+  residuals: number[];
+  /** slope = Σ slopeWeights[i] y[i]. */
+  slopeWeights: number[];
+  /** Orthonormal columns that span the model. */
+  basis: number[][];
+}
+
+/**
+ * Ordinary least squares through points, optionally of two kinds that share the slope and differ by a
+ * constant (passes to the left and to the right of a mark that is off centre).
+ *
+ * @param x      two or more numbers, not all equal
+ * @param y      as many
+ * @param isOdd  which points are of the second kind; leave it away for one kind
+ * @returns      undefined when the points do not fix the line
+ * @example fitLine([0, 1, 2], [1, 3, 5])?.slope // 2
+ */
+export function fitLine(x: number[], y: number[], isOdd?: boolean[]): LineFit | undefined {
+  const columns = [x.map(() => 1), ...(isOdd ? [isOdd.map(Number)] : []), x];
+  const basis: number[][] = [];
+  for (const column of columns) {
+    const rest = without(column, basis);
+    const size = Math.sqrt(dot(rest, rest));
+    if (!(size > 1e-9 * Math.sqrt(dot(column, column)))) return undefined;
+    basis.push(rest.map((v) => v / size));
+  }
+  const along = basis.at(-1)!;
+  const slopeWeights = along.map((q) => q / dot(along, x));
+  const slope = dot(slopeWeights, y);
+  const flat = y.map((value, i) => value - slope * x[i]!);
+  const mean = (which: (i: number) => boolean) => average(flat.filter((_, i) => which(i)));
+  const intercept = isOdd ? mean((i) => !isOdd[i]) : mean(() => true);
+  const offset = isOdd ? mean((i) => isOdd[i]!) - intercept : 0;
+  const residuals = flat.map((value, i) => value - intercept - (isOdd?.[i] ? offset : 0));
+  return { slope, intercept, offset, residuals, slopeWeights, basis };
+}
+
+/** What is left of a column when its shares along an orthonormal basis are taken away; twice, for rounding. */
+function without(column: number[], basis: number[][]): number[] {
+  let rest = column;
+  for (let turn = 0; turn < 2; turn += 1) {
+    for (const q of basis) {
+      const share = dot(q, rest);
+      rest = rest.map((v, i) => v - share * q[i]!);
+    }
+  }
+  return rest;
+}
+
+function dot(a: number[], b: number[]): number {
+  let sum = 0;
+  for (let i = 0; i < a.length; i += 1) sum += a[i]! * b[i]!;
+  return sum;
+}
+
+function average(numbers: number[]): number {
+  return numbers.reduce((sum, v) => sum + v, 0) / numbers.length;
+}
