@@ -14,44 +14,46 @@ export const WRITE_DEADLINE_MS = 2_000;
 export function eventWriter(store: LocalStore, recording: TapRecording) {
   const isFailing = shallowRef(false);
   const missing = new Set<number>();
+  /** Up to this one the disk was compared with memory and lacks nothing. */
+  let complete = 0;
   let isMending = false;
-
-  const arrived = (seq: number) => {
-    missing.delete(seq);
-    isFailing.value = missing.size > 0;
-  };
 
   function write(event: TapEvent): void {
     const written = writeEvent(store, recording, event);
+    const isHere = () => arrived(event.seq);
     withDeadline(written, WRITE_DEADLINE_MS).then(
       () => (missing.size > 0 ? mend() : undefined),
       () => {
+        if (event.seq <= complete) return;
         missing.add(event.seq);
         isFailing.value = true;
         // Late is still here.
-        written.then(() => arrived(event.seq)).catch(() => undefined);
+        written.then(isHere, () => undefined);
       },
     );
+  }
+
+  function arrived(upTo: number, from = upTo): void {
+    for (const seq of missing) if (seq >= from && seq <= upTo) missing.delete(seq);
+    isFailing.value = missing.size > 0;
   }
 
   async function mend(): Promise<void> {
     if (isMending) return;
     isMending = true;
-    const tried = [...missing];
-    try {
-      await compare();
-      tried.forEach(arrived);
-    } catch {
-      // The next write that works tries again.
-    } finally {
-      isMending = false;
-    }
+    // What fails here is tried again with the next write that works.
+    await compare().catch(() => undefined);
+    isMending = false;
   }
 
   /** Brings the disk up to what memory holds; tells how many rows it lacked. */
   async function compare(): Promise<number> {
     if (!store.isOpen()) await withDeadline(store.open(), WRITE_DEADLINE_MS);
-    return withDeadline(rewriteMissing(store, recording));
+    const held = recording.events.length;
+    const lacked = await withDeadline(rewriteMissing(store, recording));
+    complete = Math.max(complete, held);
+    arrived(held, 1);
+    return lacked;
   }
 
   return { write, compare, isFailing };

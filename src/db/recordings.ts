@@ -9,8 +9,9 @@ import { addRun, type RunPlace } from './runs';
  */
 
 /** What a recording is, without its events. */
-export function recordingRow({ events: _events, ...recording }: TapRecording): RecordingRow {
-  return { ...recording, state: 'open' };
+function openRow(recording: TapRecording): RecordingRow {
+  const { id, plan, started_wall_ms, zone_offset_min, clock_step_us, isolated } = recording;
+  return { id, state: 'open', plan, started_wall_ms, zone_offset_min, clock_step_us, isolated };
 }
 
 /** Writes one row. The first row of a recording brings the recording itself. */
@@ -19,7 +20,7 @@ export async function writeEvent(store: LocalStore, recording: TapRecording, eve
   if (event.seq > 1) await store.recordingEvents.add(row);
   else {
     await store.transaction('rw', store.recordings, store.recordingEvents, async () => {
-      await store.recordings.add(recordingRow(recording));
+      await store.recordings.add(openRow(recording));
       await store.recordingEvents.add(row);
     });
   }
@@ -38,7 +39,7 @@ export async function rewriteMissing(store: LocalStore, recording: TapRecording)
     const onDisk = await store.recordingEvents.where('recording_id').equals(recording.id).toArray();
     const seqs = new Set(onDisk.map((row) => row.seq));
     const missing = events.filter((event) => !seqs.has(event.seq));
-    if (!(await store.recordings.get(recording.id))) await store.recordings.add(recordingRow(recording));
+    if (!(await store.recordings.get(recording.id))) await store.recordings.add(openRow(recording));
     await store.recordingEvents.bulkAdd(missing.map((event) => ({ recording_id: recording.id, ...event })));
     return missing.length;
   });
@@ -48,10 +49,10 @@ export async function rewriteMissing(store: LocalStore, recording: TapRecording)
 export async function openRecordings(store: LocalStore): Promise<TapRecording[]> {
   const rows = await store.recordings.where('state').equals('open').toArray();
   const recordings = await Promise.all(
-    rows.map(async ({ state: _state, ...recording }) => {
-      const events = await store.recordingEvents.where('recording_id').equals(recording.id).sortBy('seq');
-      return { ...recording, events: events.map(({ recording_id: _id, ...event }) => event as TapEvent) };
-    }),
+    rows.map(async (row) => ({
+      ...row,
+      events: await store.recordingEvents.where('recording_id').equals(row.id).sortBy('seq'),
+    })),
   );
   return recordings.sort((a, b) => a.started_wall_ms - b.started_wall_ms);
 }
