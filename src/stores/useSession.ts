@@ -60,10 +60,7 @@ export const useSession = defineStore('session', () => {
    * Call it under the upload lock.
    */
   async function confirm(): Promise<void> {
-    if (await owesSignOut()) {
-      await api.signOut().catch(unlessSignedOutAlready);
-      await noteSignOutOwed(false);
-    }
+    await tellSignOut();
     const answer = await api.getMe();
     if (answer.me && ownerKey(answer.me) !== ownerKey(me.value)) await settle(answer.me, false);
     else if (answer.me) {
@@ -125,8 +122,15 @@ export const useSession = defineStore('session', () => {
       await rememberMe(null);
       await enter(null);
       standing.value = 'unknown';
-      await confirm().catch(() => undefined);
+      await tellSignOut().catch(() => undefined);
     });
+  }
+
+  /** Tells the server of a sign-out it has not heard of. */
+  async function tellSignOut(): Promise<void> {
+    if (!(await owesSignOut())) return;
+    await api.signOut().catch(unlessSignedOutAlready);
+    await noteSignOutOwed(false);
   }
 
   return {

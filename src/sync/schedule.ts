@@ -47,7 +47,7 @@ export function createSchedule(parts: ScheduleParts): Schedule {
   /** Doubling, and up to 30 % off either way so that a class does not come back all at once. */
   const retryDelay = () => {
     const step = Math.min(LONGEST_RETRY_MS, FIRST_RETRY_MS * 2 ** (failures - 1));
-    return step * (0.7 + 0.6 * parts.random());
+    return Math.round(step * (0.7 + 0.6 * parts.random()));
   };
 
   const delayAfter = (outcome: RoundOutcome | null): number | null => {

@@ -1,0 +1,118 @@
+import { freshStore } from '../support/freshStorage';
+import { describe, expect, it } from 'vitest';
+import { applyFeed, feedCursor, noteEpoch } from '@/db/feed';
+import type { LocalStore } from '@/db/localStore';
+import { applyVerdicts, outbox, sendOnceMore } from '@/db/outbox';
+import { addEdit, addRun } from '@/db/runs';
+import { EPOCH, feedAnswer, feedRun, OTHER_EPOCH, rawEdit, rawRun, stored } from '../support/samples';
+
+const NOWHERE = { class_id: null, bench: null };
+const everything = async (store: LocalStore) => ({
+  runs: await store.runs.toArray(),
+  edits: await store.edits.toArray(),
+  meta: await store.meta.toArray(),
+});
+
+describe('applyFeed', () => {
+  it('applied twice leaves the store as once', async () => {
+    const store = freshStore();
+    const answer = feedAnswer([feedRun(rawRun()), feedRun(rawRun())], 12);
+    await applyFeed(store, answer);
+    const once = await everything(store);
+    await applyFeed(store, answer);
+    expect(await everything(store)).toEqual(once);
+    expect(await feedCursor(store)).toBe(12);
+  });
+
+  it('keeps the cursor where it was when an item cannot be kept', async () => {
+    const store = freshStore();
+    const unreadable = { ...feedRun(rawRun()), raw: '{' };
+    await expect(applyFeed(store, feedAnswer([feedRun(rawRun()), unreadable], 9))).rejects.toThrow();
+    expect(await feedCursor(store)).toBe(0);
+    expect(await store.runs.count()).toBe(0);
+  });
+
+  it('a run made here comes back with author and receipt and stays one made here', async () => {
+    const store = freshStore();
+    const run = rawRun();
+    const row = await addRun(store, run, NOWHERE);
+    await applyFeed(store, feedAnswer([feedRun(run)], 3));
+    expect(await store.runs.get(run.id)).toMatchObject({
+      origin: 'mine',
+      state: 'received',
+      created_seq: row.created_seq,
+      bench: 3,
+      author: { name: 'Bob 3' },
+      receipt: { code: 'K7QM' },
+    });
+  });
+
+  it('another text under a known id does not touch the one kept here', async () => {
+    const store = freshStore();
+    const run = rawRun();
+    const row = await addRun(store, run, NOWHERE);
+    await applyFeed(store, feedAnswer([feedRun({ ...run, note: 'other' })], 3));
+    expect(await store.runs.get(run.id)).toEqual(row);
+  });
+});
+
+describe('a new epoch of the server', () => {
+  it('puts what was received from here back in the queue and starts the feed over', async () => {
+    const store = freshStore();
+    const row = await addRun(store, rawRun(), NOWHERE);
+    await applyFeed(store, feedAnswer([feedRun(rawRun())], 30));
+    await applyVerdicts(store, [stored({ type: 'run', id: row.id, digest: row.digest })]);
+
+    expect(await noteEpoch(store, OTHER_EPOCH)).toBe(true);
+    expect((await outbox(store, new Set(), 50)).map(({ id }) => id)).toEqual([row.id]);
+    expect(await feedCursor(store)).toBe(0);
+    expect(await noteEpoch(store, OTHER_EPOCH)).toBe(false);
+  });
+
+  it('is not seen in the first answer ever', async () => {
+    const store = freshStore();
+    expect(await noteEpoch(store, EPOCH)).toBe(false);
+  });
+});
+
+describe('keeping runs and edits', () => {
+  it('the same run kept twice is one run', async () => {
+    const store = freshStore();
+    const run = rawRun();
+    const first = await addRun(store, run, NOWHERE);
+    expect(await addRun(store, run, NOWHERE)).toEqual(first);
+    expect(await store.runs.count()).toBe(1);
+  });
+
+  it('R2: another text under a kept id is turned down and the first stays', async () => {
+    const store = freshStore();
+    const run = rawRun();
+    const first = await addRun(store, run, NOWHERE);
+    await expect(addRun(store, { ...run, note: 'other' }, NOWHERE)).rejects.toThrow(/another text/);
+    expect(await store.runs.get(run.id)).toEqual(first);
+  });
+
+  it('edits of one run are numbered in the order they were made, even at once', async () => {
+    const store = freshStore();
+    const { id } = rawRun();
+    await Promise.all([1, 2, 3].map((n) => addEdit(store, rawEdit(id, { kind: 'set_swings', swings: 20 + n }))));
+    const seqs = (await store.edits.toArray()).map((row) => (JSON.parse(row.raw) as { made_seq: number }).made_seq);
+    expect(seqs.sort()).toEqual([1, 2, 3]);
+  });
+
+  it('a refused run goes back in the queue by hand, a received one never', async () => {
+    const store = freshStore();
+    const refused = await addRun(store, rawRun(), NOWHERE);
+    const received = await addRun(store, rawRun(), NOWHERE);
+    await applyVerdicts(store, [
+      { ...refusal(refused), verdict: 'refused' },
+      stored({ type: 'run', id: received.id, digest: received.digest }),
+    ]);
+    await sendOnceMore(store, 'run', refused.id);
+    await sendOnceMore(store, 'run', received.id);
+    expect((await outbox(store, new Set(), 50)).map(({ id }) => id)).toEqual([refused.id]);
+  });
+});
+
+const refusal = ({ id, digest }: { id: string; digest: string }) =>
+  ({ type: 'run', id, digest, code: 'too_many', message: 'Over the limit of a day.', fields: [] }) as const;
