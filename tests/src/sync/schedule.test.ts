@@ -68,7 +68,7 @@ describe('R9: rounds come by themselves', () => {
   });
 
   it('woken while a round runs, another follows at once', async () => {
-    let end = (_: RoundOutcome) => undefined as void;
+    let end: (outcome: RoundOutcome) => void = () => undefined;
     const round = vi.fn(() => new Promise<RoundOutcome>((resolve) => (end = resolve)));
     const schedule = tab(round);
     schedule.wake();
