@@ -19,6 +19,8 @@ export const MAX_SYNC_BYTES = 1_000_000;
 export const MAX_BODY_BYTES = 32_000;
 /** Runs one account may hand in per day. */
 export const MAX_RUNS_PER_DAY = 2_000;
+/** Edits one account may hand in per day. */
+export const MAX_EDITS_PER_DAY = 10_000;
 /** Benches a class may number. */
 export const MAX_BENCH = 40;
 /** Characters in a note or a reason. */

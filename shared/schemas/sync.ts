@@ -122,3 +122,12 @@ export const FeedAnswer = z.strictObject({
   items: z.array(FeedItem),
 });
 export type FeedAnswer = z.infer<typeof FeedAnswer>;
+
+/** What GET /api/health says: enough to tell this server from a captive portal, and this life of its database from another. */
+export const HealthAnswer = z.strictObject({
+  status: z.literal('ok'),
+  version: z.string(),
+  server_epoch: Uuid,
+  server_wall_ms: WallMs,
+});
+export type HealthAnswer = z.infer<typeof HealthAnswer>;

@@ -1,0 +1,147 @@
+import { setImmediate as nextTurn } from 'node:timers/promises';
+import type { Logger } from 'pino';
+import { analyseRun, METHOD } from '@shared/analysis/analyseRun';
+import type { Analysis } from '@shared/schemas/analysis';
+import type { RawEdit } from '@shared/schemas/edit';
+import type { RawRun } from '@shared/schemas/run';
+import type { Database } from '../models/openDatabase';
+import { selectWhereIn } from '../models/selectWhereIn';
+import { storeAnalyses, type Computed } from './storeAnalyses';
+
+/** Computes analyses of record away from the requests that ask for them, one run at a time. */
+export interface AnalysisQueue {
+  add(runIds: readonly string[]): void;
+  /** Analyses in force of those runs, waiting at most that long; runs that are not done by then are left out. */
+  ready(runIds: readonly string[], withinMs: number): Promise<Analysis[]>;
+  /** Queues every run without an analysis of its present edits by the present method. */
+  addMissing(): Promise<number>;
+  /** Resolves when nothing is left to do. */
+  settled(): Promise<void>;
+  /** Ends after the batch in work; what is left is found again by addMissing. */
+  stop(): Promise<void>;
+}
+
+/** Analyses stored in one transaction: enough to share its cost, few enough to be heard of soon. */
+const BATCH = 10;
+
+export function createAnalysisQueue(database: Database, log: Logger, now: () => number): AnalysisQueue {
+  const waiting = new Set<string>();
+  let inWork = new Set<string>();
+  let listeners: (() => void)[] = [];
+  let worker: Promise<void> | null = null;
+  let stopped = false;
+
+  const isDone = (ids: readonly string[]) => ids.every((id) => !waiting.has(id) && !inWork.has(id));
+
+  async function work(): Promise<void> {
+    while (waiting.size > 0 && !stopped) {
+      inWork = new Set([...waiting].slice(0, BATCH));
+      for (const id of inWork) waiting.delete(id);
+      try {
+        await storeAnalyses(database, await computeEach([...inWork]), now());
+      } catch (error) {
+        log.error({ err: error, runs: [...inWork] }, 'analyses could not be stored');
+      }
+      inWork = new Set();
+      tellListeners();
+    }
+    worker = null;
+  }
+
+  /** One run a turn of the event loop: requests go on in between. A run that cannot be computed stops no other. */
+  async function computeEach(runIds: string[]): Promise<Computed[]> {
+    const done: Computed[] = [];
+    for (const run of await loadInputs(database, runIds)) {
+      await nextTurn();
+      try {
+        const analysis = analyseRun(
+          JSON.parse(run.raw) as RawRun,
+          run.edits.map(({ raw }) => JSON.parse(raw) as RawEdit),
+        );
+        done.push({ run, edit_seq: run.edits.at(-1)?.seq ?? 0, analysis });
+      } catch (error) {
+        log.error({ err: error, run: run.id }, 'a run could not be analysed');
+      }
+    }
+    return done;
+  }
+
+  function tellListeners(): void {
+    const told = listeners;
+    listeners = [];
+    for (const tell of told) tell();
+  }
+
+  const queue: AnalysisQueue = {
+    add(runIds) {
+      for (const id of runIds) waiting.add(id);
+      if (waiting.size > 0 && !stopped) worker ??= work();
+    },
+    async ready(runIds, withinMs) {
+      const deadline = performance.now() + withinMs;
+      while (!isDone(runIds) && !stopped && performance.now() < deadline) {
+        await Promise.race([
+          new Promise<void>((resolve) => listeners.push(resolve)),
+          new Promise<void>((resolve) => setTimeout(resolve, deadline - performance.now()).unref()),
+        ]);
+      }
+      const done = runIds.filter((id) => isDone([id]));
+      const rows = await selectWhereIn<{ body: string }>(
+        database,
+        'SELECT a.body FROM current_analyses c JOIN analyses a ON a.seq = c.analysis_seq',
+        'c.run_id',
+        done,
+      );
+      return rows.map(({ body }) => JSON.parse(body) as Analysis);
+    },
+    async addMissing() {
+      const rows = await database.select<{ id: string }>(
+        `SELECT r.id FROM runs r
+           LEFT JOIN current_analyses c ON c.run_id = r.id
+           LEFT JOIN analyses a ON a.seq = c.analysis_seq
+         WHERE a.seq IS NULL OR a.method <> $1
+           OR c.edit_seq < (SELECT max(e.seq) FROM edits e WHERE e.run_id = r.id)`,
+        [METHOD],
+      );
+      queue.add(rows.map(({ id }) => id));
+      return rows.length;
+    },
+    async settled() {
+      while (worker) await worker;
+    },
+    async stop() {
+      stopped = true;
+      tellListeners();
+      await worker;
+    },
+  };
+  return queue;
+}
+
+export interface Inputs {
+  id: string;
+  raw: string;
+  class_id: string | null;
+  bench: number | null;
+  owner_id: string;
+  /** In the server's order, which is the order of folding. */
+  edits: { seq: number; raw: string }[];
+}
+
+async function loadInputs(database: Database, runIds: string[]): Promise<Inputs[]> {
+  // Runs are read last: an edit that arrives in between is in the queue again by itself.
+  const edits = await selectWhereIn<{ seq: number; run_id: string; raw: string }>(
+    database,
+    'SELECT seq, run_id, raw FROM edits',
+    'run_id',
+    runIds,
+  );
+  edits.sort((a, b) => a.seq - b.seq);
+  const runs = await selectWhereIn<Omit<Inputs, 'edits'>>(
+    database,
+    'SELECT id, raw, class_id, bench, owner_id FROM runs',
+    'id',
+    runIds,
+  );
+  return runs.map((run) => ({ ...run, edits: edits.filter(({ run_id }) => run_id === run.id) }));
+}

@@ -1,0 +1,115 @@
+import { randomUUID } from 'node:crypto';
+import { Op, type Transaction } from 'sequelize';
+import type { StaffRole } from '@shared/schemas/accounts';
+import type { Deps } from '../deps';
+import { AppError, badField } from '../errors';
+import { resetLetter } from '../mail/letters';
+import type { StaffAccount } from '../models/StaffAccount';
+import { isCommonPassword } from './commonPasswords';
+import { revokeAllSignIns } from './signIns';
+import { createToken, dropTokens, useToken } from './staffTokens';
+
+/** Accounts of staff: how they come to be, how they sign in, how a password is chosen anew. */
+
+export async function anyStaff({ database }: Deps): Promise<boolean> {
+  return (await database.models.StaffAccount.count()) > 0;
+}
+
+/** A new link to set up the first coordinator; earlier ones stop working. */
+export async function createSetUpLink(deps: Deps): Promise<string> {
+  const { token } = await deps.database.writeTransaction(async (transaction) => {
+    await dropTokens(deps, { purpose: 'set_up' }, transaction);
+    return createToken(deps, { purpose: 'set_up' }, transaction);
+  });
+  return `${deps.publicUrl}/set-up/${token}`;
+}
+
+export async function setUpFirstCoordinator(
+  deps: Deps,
+  wanted: { token: string; name: string; email: string; password: string },
+): Promise<StaffAccount> {
+  const passwordHash = await hashNewPassword(deps, wanted.password, [wanted.name, wanted.email]);
+  return deps.database.writeTransaction(async (transaction) => {
+    await useToken(deps, 'set_up', wanted.token, transaction);
+    return createAccount(deps, { ...wanted, role: 'coordinator', passwordHash }, transaction);
+  });
+}
+
+export async function acceptInvite(
+  deps: Deps,
+  wanted: { token: string; name: string; password: string },
+): Promise<StaffAccount> {
+  const passwordHash = await hashNewPassword(deps, wanted.password, [wanted.name]);
+  return deps.database.writeTransaction(async (transaction) => {
+    const invite = await useToken(deps, 'invite', wanted.token, transaction);
+    const { email, role } = invite;
+    return createAccount(deps, { name: wanted.name, email: email!, role: role!, passwordHash }, transaction);
+  });
+}
+
+/** The account, or undefined after as long a wait: a wrong password and an unknown e-mail look the same. */
+export async function checkPassword(deps: Deps, email: string, password: string): Promise<StaffAccount | undefined> {
+  const account = await deps.database.models.StaffAccount.findOne({ where: { email } });
+  const { matches, stale } = await deps.hasher.verify(account?.password_hash ?? null, password);
+  if (!account || !matches || account.disabled_ms !== null) return undefined;
+  if (stale) {
+    const fresh = await deps.hasher.hash(password);
+    await deps.database.writeTransaction((transaction) => account.update({ password_hash: fresh }, { transaction }));
+  }
+  return account;
+}
+
+/** Mails a reset link when the account exists. Called after the answer went out, so its length tells nothing. */
+export async function sendResetLink(deps: Deps, email: string): Promise<void> {
+  const account = await deps.database.models.StaffAccount.findOne({
+    where: { email, disabled_ms: { [Op.is]: null } },
+  });
+  if (!account) return;
+  if (!deps.mailer.sends) {
+    deps.log.warn({ account: account.id }, 'a new password was asked for, but no e-mail is set up (SMTP_URL)');
+    return;
+  }
+  const { token } = await deps.database.writeTransaction(async (transaction) => {
+    await dropTokens(deps, { purpose: 'reset', account_id: account.id }, transaction);
+    return createToken(deps, { purpose: 'reset', account_id: account.id }, transaction);
+  });
+  await deps.mailer.send(resetLetter(email, `${deps.publicUrl}/reset/${token}`));
+}
+
+/** Sets the new password and signs the account out everywhere. It does not sign in. */
+export async function resetPassword(deps: Deps, token: string, password: string): Promise<void> {
+  const passwordHash = await hashNewPassword(deps, password, []);
+  await deps.database.writeTransaction(async (transaction) => {
+    const { account_id } = await useToken(deps, 'reset', token, transaction);
+    await deps.database.models.StaffAccount.update(
+      { password_hash: passwordHash },
+      { where: { id: account_id! }, transaction },
+    );
+    await revokeAllSignIns(deps, account_id!, transaction);
+  });
+}
+
+async function hashNewPassword(deps: Deps, password: string, ownWords: string[]): Promise<string> {
+  if (isCommonPassword(password)) {
+    throw badField('password', 'this password is one of the first that are tried: take one nobody would guess');
+  }
+  if (ownWords.some((word) => word.toLowerCase() === password.toLowerCase())) {
+    throw badField('password', 'this password is your own name or address: take one nobody would guess');
+  }
+  return deps.hasher.hash(password);
+}
+
+async function createAccount(
+  { database, now }: Deps,
+  wanted: { name: string; email: string; role: StaffRole; passwordHash: string },
+  transaction: Transaction,
+): Promise<StaffAccount> {
+  const { name, email, role, passwordHash } = wanted;
+  if (await database.models.StaffAccount.findOne({ where: { email }, transaction })) {
+    throw new AppError(409, 'already_staff', 'This e-mail address has an account already. Sign in with it.');
+  }
+  return database.models.StaffAccount.create(
+    { id: randomUUID(), name, email, role, password_hash: passwordHash, created_ms: now() },
+    { transaction },
+  );
+}

@@ -1,0 +1,99 @@
+import { mkdirSync, readFileSync } from 'node:fs';
+import { createServer as createHttpServer, type RequestListener, type Server } from 'node:http';
+import { createServer as createHttpsServer } from 'node:https';
+import type { AddressInfo } from 'node:net';
+import { createApp } from './app';
+import type { Config } from './config';
+import { lockDataDir } from './dataDirLock';
+import type { Deps } from './deps';
+import { createLog } from './logging';
+import { createMailer } from './mail/mailer';
+import { openSessions } from './middleware/sessions';
+import { openDatabase } from './models/openDatabase';
+import { serverEpoch } from './models/serverMeta';
+import { packageVersion } from './packageRoot';
+import { createAnalysisQueue } from './services/analysisQueue';
+import { createBackgroundJobs } from './services/backgroundJobs';
+import { createHasher } from './services/hasher';
+import { createTryCounter } from './services/tryCounter';
+
+export interface RunningServer {
+  /** Where it listens. */
+  url: string;
+  deps: Deps;
+  /** Takes no more requests, lets those in work finish, closes the databases. Ends within five seconds. */
+  stop(): Promise<void>;
+}
+
+/** Requests still open after this long are cut off, so that stopping ends within five seconds. */
+const FINISH_WITHIN_MS = 3_000;
+
+export async function startServer(config: Config, now: () => number = Date.now): Promise<RunningServer> {
+  mkdirSync(config.dataDir, { recursive: true, mode: 0o700 });
+  const unlock = await lockDataDir(config.dataDir);
+  const deps = await createDeps(config, now);
+  const server = listener(config, createApp(deps));
+  const port = await listen(server, config);
+  const scheme = config.tls ? 'https' : 'http';
+  deps.publicUrl = config.publicUrl ?? `${scheme}://localhost:${port}`;
+  await deps.analyses.addMissing();
+  let stopped: Promise<void> | undefined;
+  return {
+    url: `${scheme}://${config.host.includes(':') ? `[${config.host}]` : config.host}:${port}`,
+    deps,
+    stop: () => (stopped ??= stop(server, deps).finally(unlock)),
+  };
+}
+
+async function createDeps(config: Config, now: () => number): Promise<Deps> {
+  const log = createLog(config);
+  const database = await openDatabase(config.dataDir);
+  const { windowMs, failedPerAccount, failedPerAddress, resetsPerAccount } = config.rateLimits;
+  return {
+    config,
+    publicUrl: config.publicUrl ?? '',
+    version: packageVersion(),
+    epoch: await serverEpoch(database),
+    log,
+    database,
+    sessions: await openSessions(config),
+    hasher: await createHasher(),
+    mailer: await createMailer(config),
+    analyses: createAnalysisQueue(database, log, now),
+    background: createBackgroundJobs(log),
+    tries: {
+      byAccount: createTryCounter(failedPerAccount, windowMs, now),
+      byAddress: createTryCounter(failedPerAddress, windowMs, now),
+      resets: createTryCounter(resetsPerAccount, windowMs, now),
+    },
+    now,
+  };
+}
+
+function listener({ tls }: Config, app: RequestListener): Server {
+  if (!tls) return createHttpServer(app);
+  return createHttpsServer({ cert: readFileSync(tls.certFile), key: readFileSync(tls.keyFile) }, app);
+}
+
+function listen(server: Server, { port, host }: Config): Promise<number> {
+  return new Promise((resolve, reject) => {
+    server.once('error', reject);
+    server.listen(port, host, () => {
+      server.off('error', reject);
+      resolve((server.address() as AddressInfo).port);
+    });
+  });
+}
+
+async function stop(server: Server, deps: Deps): Promise<void> {
+  const closed = new Promise((resolve) => server.close(resolve));
+  server.closeIdleConnections();
+  const cutOff = setTimeout(() => server.closeAllConnections(), FINISH_WITHIN_MS);
+  await deps.analyses.stop();
+  await closed;
+  clearTimeout(cutOff);
+  await deps.background.settled();
+  await deps.mailer.close();
+  await deps.sessions.close();
+  await deps.database.close();
+}
