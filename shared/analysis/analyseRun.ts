@@ -1,0 +1,109 @@
+import type { Analysis, BudgetLine, MarkRow } from '../schemas/analysis';
+import { canonicalText, digestOf } from '../schemas/canonical';
+import type { RawEdit } from '../schemas/edit';
+import type { RawRun } from '../schemas/run';
+import { gravityFrom } from '../physics/gravity';
+import { reducedLength } from '../physics/reducedLength';
+import { foldRun } from '../timing/foldRun';
+import type { RunView } from '../timing/runView';
+import { degrees } from '../units/angle';
+import { findFlags } from './findFlags';
+import { lineMethod } from './lineMethod';
+import type { Estimate, Fit } from './method';
+import { stateResult } from './stateResult';
+
+/** A raw run or edit with the digest of its canonical text. */
+export interface Sealed<T> {
+  digest: string;
+  content: T;
+}
+
+const METHOD = lineMethod;
+
+/**
+ * Everything that is computed from a run and its edits: the one entry for phone and server, which
+ * print the same digits. What cannot be computed is null, and `missing` says what would bring it, in
+ * the order a person should give it.
+ *
+ * Marks are taken as they are until an edit says otherwise: a lap that looks like two swings counts as
+ * one, T is then plainly off and its uncertainty wide, and the flag says why. Renumbering without being
+ * asked would put a guess of the program's in place of a record, and nobody would look.
+ *
+ * `budget` is that of T0, or of T while T0 is not known.
+ *
+ * @param run    any run that keeps the schema
+ * @param edits  in the order they count
+ * @returns      finite numbers or null; nothing is thrown
+ */
+export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<RawEdit>[] }): Analysis {
+  const changes = edits.map((edit) => edit.content);
+  const view = foldRun(run.content, changes);
+  const fit = METHOD.fit(view);
+  const period = stated(fit.period);
+  const smallPeriod = stated(fit.smallPeriod);
+  const length = view.rig ? (reducedLength(view.rig) ?? null) : null;
+  const gravity = smallPeriod && length ? gravityOf(fit.smallPeriod!, length) : null;
+  return {
+    run_id: run.content.id,
+    input_digest: digestOf(
+      canonicalText({ run: run.digest, edits: edits.map((edit) => edit.digest), method: METHOD.id }),
+    ),
+    method: METHOD.id,
+    swings: view.swings,
+    marks_used: view.marks.filter((mark) => !mark.leftOut).length,
+    period_s: period,
+    small_period_s: smallPeriod,
+    amplitude: smallPeriod && amplitudeOf(fit),
+    jitter_s: fit.jitter,
+    lag1: fit.lag1,
+    length_m: length,
+    g_m_s2: gravity && stateResult(gravity.value, gravity.shares),
+    budget: (smallPeriod && fit.smallPeriod?.shares) ?? (period && fit.period?.shares) ?? [],
+    g_budget: gravity?.shares ?? [],
+    flags: findFlags(run.content, changes, METHOD),
+    marks: markRows(view, fit),
+    missing: [...fit.missing, ...(length === null ? (['length'] as const) : [])],
+  };
+}
+
+function stated(estimate: Estimate | null) {
+  return estimate && estimate.value > 0 ? stateResult(estimate.value, estimate.shares) : null;
+}
+
+function amplitudeOf({ amplitude }: Fit): Analysis['amplitude'] {
+  if (!amplitude) return null;
+  const inDegrees = ({ value, u }: { value: number; u: number }) => ({ value: degrees(value), u: degrees(u) });
+  return {
+    ratio: amplitude.ratio,
+    start_deg: inDegrees(amplitude.start),
+    end_deg: inDegrees(amplitude.end),
+    decay_known: amplitude.decayKnown,
+  };
+}
+
+/** g = 4π²L/T0²: every share of T0 counts 2g/T0, the length g/L. */
+function gravityOf(smallPeriod: Estimate, length: { value: number; u: number }): Estimate {
+  const value = gravityFrom(smallPeriod.value, length.value);
+  const perSecond = (2 * value) / smallPeriod.value;
+  const fromPeriod = smallPeriod.shares.map((share) => ({ ...share, u: share.u * perSecond }));
+  const fromLength: BudgetLine = { term: 'length', type: 'B', u: (length.u * value) / length.value, dof: null };
+  return { value, shares: [...fromPeriod, fromLength] };
+}
+
+function markRows(view: RunView, fit: Fit): MarkRow[] {
+  let before: number | null = null;
+  let used = 0;
+  return view.marks.map(({ mark, swing, time, leftOut }) => {
+    if (leftOut) return { mark, swing: null, time_s: time, lap_s: null, residual_s: null };
+    const row = {
+      mark,
+      swing,
+      time_s: time,
+      lap_s: before === null ? null : time - before,
+      residual_s: fit.residuals[used] ?? null,
+    };
+    before = time;
+    used += 1;
+    return row;
+  });
+}

@@ -1,0 +1,45 @@
+/**
+ * Inverse of a small symmetric positive definite matrix.
+ *
+ * @returns  undefined when it is singular or not finite
+ */
+export function invert(matrix: number[][]): number[][] | undefined {
+  const scale = matrix.map((row, i) => 1 / Math.sqrt(row[i]!));
+  if (!scale.every((s) => Number.isFinite(s) && s > 0)) return undefined;
+  const lower = cholesky(matrix.map((row, i) => row.map((v, j) => v * scale[i]! * scale[j]!)));
+  if (!lower) return undefined;
+  const columns = matrix.map((_, k) => {
+    const unit = matrix.map((__, i) => (i === k ? 1 : 0));
+    const down = unit.reduce<number[]>((y, e, i) => [...y, (e - partial(lower[i]!, y, i)) / lower[i]![i]!], []);
+    const x = matrix.map(() => 0);
+    for (let i = matrix.length - 1; i >= 0; i -= 1) {
+      const rest = x.reduce((sum, v, j) => (j > i ? sum + lower[j]![i]! * v : sum), 0);
+      x[i] = (down[i]! - rest) / lower[i]![i]!;
+    }
+    return x;
+  });
+  return columns.map((column, k) => column.map((v, i) => v * scale[i]! * scale[k]!));
+}
+
+/**
+ * Lower triangle L with L Lᵀ = matrix.
+ *
+ * @returns  undefined when the matrix is not positive definite
+ */
+export function cholesky(matrix: number[][]): number[][] | undefined {
+  const lower = matrix.map((row) => row.map(() => 0));
+  for (let i = 0; i < matrix.length; i += 1) {
+    for (let j = 0; j <= i; j += 1) {
+      const rest = matrix[i]![j]! - partial(lower[i]!, lower[j]!, j);
+      if (i === j && !(rest > 1e-14 * matrix[i]![i]!)) return undefined;
+      lower[i]![j] = i === j ? Math.sqrt(rest) : rest / lower[j]![j]!;
+    }
+  }
+  return lower;
+}
+
+function partial(a: number[], b: number[], count: number): number {
+  let sum = 0;
+  for (let k = 0; k < count; k += 1) sum += a[k]! * b[k]!;
+  return sum;
+}

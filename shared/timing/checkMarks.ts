@@ -1,0 +1,52 @@
+import type { Flag } from '../schemas/analysis';
+import type { Measured } from '../schemas/common';
+import { checkCount } from './checkCount';
+import { checkFirstMark } from './checkFirstMark';
+import { checkLaps } from './checkLaps';
+import type { RunView } from './runView';
+
+/** What a fit has found so far; null and empty while there is nothing. */
+export interface Known {
+  /** For each mark in force: what grows evenly with time. */
+  elapsed: number[];
+  period: Measured | null;
+  smallPeriod: Measured | null;
+}
+
+/** A flag before anybody looked at it. */
+export type Finding = Omit<Flag, 'answered'>;
+
+/**
+ * What a person should look at. Proposals only: nothing is changed here. Thresholds follow the run's own
+ * jitter. A flag somebody kept comes back answered.
+ */
+export function checkMarks(view: RunView, known: Known): Flag[] {
+  const laps = checkLaps(view);
+  const findings = [
+    ...laps,
+    // With laps in doubt the line is no judge of the first mark or the count.
+    ...(laps.length === 0 ? [...checkFirstMark(view, known), ...checkCount(view, known)] : []),
+    ...checkRecording(view),
+  ];
+  return findings.map((finding) => ({
+    ...finding,
+    answered: view.kept.some(({ flag, mark }) => flag === finding.code && mark === finding.mark),
+  }));
+}
+
+/** What the pad wrote down: the clocks parted, or the run was cut short. */
+function checkRecording({ capture, marks }: RunView): Finding[] {
+  if (capture.kind !== 'tap') return [];
+  const gaps = new Map<number, number>();
+  for (const event of capture.events) {
+    if (event.kind !== 'clock_gap') continue;
+    const mark = Math.min(Math.max(event.after_mark, 0), marks.length - 1);
+    gaps.set(mark, (gaps.get(mark) ?? 0) + (event.wall_minus_mono_ms ?? 0));
+  }
+  const parted = [...gaps].map(
+    ([mark, ms]): Finding => ({ code: 'clock_gap', mark, seen: { wall_minus_mono_s: ms / 1000 }, choices: ['keep_flagged'] }),
+  );
+  if (capture.ended !== 'cut_short') return parted;
+  const planned = capture.planned_swings === null ? {} : { planned_swings: capture.planned_swings };
+  return [...parted, { code: 'cut_short', mark: null, seen: { marks: marks.length, ...planned }, choices: ['keep_flagged'] }];
+}
