@@ -35,7 +35,7 @@ export function amplitudeAt({ from, to, first, last, law }: AmplitudeCurve, swin
   if (to === from) return clamp(first);
   const share = (swing - from) / (to - from);
   const ratio = last / first;
-  if (Math.abs(law) < 1e-6) return clamp(first * ratio ** share);
+  if (Math.abs(law) < 1e-8) return clamp(first * ratio ** share);
   const power = 1 + (ratio ** law - 1) * share;
   if (power <= 0) return law > 0 ? 0 : LARGEST_AMPLITUDE;
   return clamp(first * power ** (1 / law));

@@ -46,7 +46,8 @@ export function fitAmplitudes(readings: AmplitudePoint[]): AmplitudeFit | undefi
   if (from === to) return withoutDecay(points);
   const fit = leastSquares(
     (unknowns) => {
-      const curve = curveOf(unknowns, from, to);
+      const [law, first, last] = unknowns as [number, number, number];
+      const curve = { from, to, law, first, last };
       return [...points.map((p) => (amplitudeAt(curve, p.swing) - p.amplitude) / p.u), unknowns[0]! / LAW_U];
     },
     [0, points[0]!.amplitude, points.at(-1)!.amplitude],

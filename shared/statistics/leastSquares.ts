@@ -48,7 +48,7 @@ export function leastSquares(
 
 function normalEquations(residuals: (unknowns: number[]) => number[], unknowns: number[], left: number[]) {
   const slopes = unknowns.map((v, i) => {
-    const step = 1e-6 * Math.max(Math.abs(v), 1e-3);
+    const step = 1e-4 * Math.max(Math.abs(v), 0.01);
     const [up, down] = [step, -step].map((by) => residuals(unknowns.map((w, j) => (i === j ? w + by : w))));
     return left.map((_, k) => (up![k]! - down![k]!) / (2 * step));
   });
