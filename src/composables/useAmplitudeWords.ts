@@ -19,7 +19,7 @@ export function useAmplitudeWords() {
         : t('run.amplitude.sideways', {
             sideways_cm: formatSeconds(as_read.sideways_um / 10_000, { places: 1, ...options() }),
           });
-    return t('run.amplitude.at', { amplitude, swing });
+    return swing > 0 ? t('run.amplitude.at', { amplitude, swing }) : t('run.amplitude.atStart', { amplitude });
   }
   return { degrees, readingWords };
 }

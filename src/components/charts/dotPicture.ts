@@ -50,9 +50,8 @@ export function dotPicture(summary: BenchSummary, words: Words, size: { height: 
     paint: (brush) => {
       paintMiddle(brush, summary, scale);
       const marker = Math.min(MARKER * scale, laneHeight * 0.36);
-      lanes.forEach((lane, i) =>
-        paintLane(brush, lane, brush.y(place(i)), { marker, scale, type: laneType }, summary, words),
-      );
+      const sizes = (runs: number) => ({ marker, scale, type: laneType, step: (0.7 * laneHeight) / (runs + 1) });
+      lanes.forEach((lane, i) => paintLane(brush, lane, brush.y(place(i)), sizes(lane.dots.length), summary, words));
     },
   };
 }
@@ -69,6 +68,8 @@ function paintMiddle(brush: Brush, { low_s, high_s, median_s }: BenchSummary, sc
 }
 
 interface LaneSizes {
+  /** Between two runs of one bench. */
+  step: number;
   marker: number;
   scale: number;
   type: number;
@@ -78,10 +79,12 @@ function paintLane(brush: Brush, lane: Lane, y: number, sizes: LaneSizes, summar
   const { theme, left, width } = brush;
   const colour = theme.series[(lane.bench - 1) % theme.series.length]!;
   paintLine(brush, [left, y], [left + width, y], { colour: theme.line, width_px: 1 });
-  for (const dot of lane.dots) {
-    if (summary.beyond.includes(dot)) paintBeyond(brush, dot, y, colour, sizes, words);
-    else paintDot(brush, dot, y, colour, sizes);
-  }
+  lane.dots.forEach((dot, i) => {
+    // Runs of one bench stand a little above and below its line, so that their bars do not cover each other.
+    const own = y + brush.px(sizes.step) * (i - (lane.dots.length - 1) / 2);
+    if (summary.beyond.includes(dot)) paintBeyond(brush, dot, own, colour, sizes, words);
+    else paintDot(brush, dot, own, colour, sizes);
+  });
 }
 
 function paintDot(brush: Brush, dot: BenchDot, y: number, colour: string, { marker, scale }: LaneSizes): void {

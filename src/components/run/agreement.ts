@@ -1,11 +1,5 @@
 import type { Analysis } from '@shared/schemas/analysis';
 import { canonicalText } from '@shared/schemas/canonical';
-import type { RawEdit } from '@shared/schemas/edit';
-
-/** Ids of edits that were taken out of force by a later `withdraw`. */
-export function withdrawnIds(edits: readonly RawEdit[]): Set<string> {
-  return new Set(edits.flatMap(({ change }) => (change.kind === 'withdraw' ? [change.edit_id] : [])));
-}
 
 export type Agreement = 'agrees' | 'differs' | 'otherInputs';
 
