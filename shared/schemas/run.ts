@@ -2,14 +2,14 @@ import { z } from 'zod';
 import { Note, RunUs, SignedRunUs, Uuid, WallMs } from './common';
 import { MAX_BLOCKS, MAX_MARKS, MAX_RUN_US, MAX_SWINGS } from './limits';
 import { AmplitudeReading, Rig } from './rig';
+import { INPUTS, RUN_FORMAT, RUN_VERSION } from './runWords';
+
+export { INPUTS, RUN_FORMAT, RUN_VERSION, type TapInput } from './runWords';
 
 /**
  * The raw part of a run: what was recorded, and nothing that is computed or changed later.
  * It never changes once sealed. Its canonical text (canonical.ts) is stored and sent byte for byte.
  */
-
-export const RUN_FORMAT = 'swaymark-run';
-export const RUN_VERSION = 1;
 
 /** Strictly rising, starting at the first mark. */
 const rising = (least: number, most: number) =>
@@ -22,9 +22,6 @@ const rising = (least: number, most: number) =>
 
 /** 0.5: every pass. 1: once a swing. k: once every k swings. */
 export const SwingsPerMark = z.union([z.literal(0.5), z.int().min(1).max(20)]);
-
-export const INPUTS = ['touch', 'pen', 'mouse', 'key', 'assistive'] as const;
-export type TapInput = (typeof INPUTS)[number];
 
 /** Something that happened while timing. `at_us` counts from the first mark; `after_mark` is −1 before it. */
 export const RunEvent = z.strictObject({

@@ -1,5 +1,6 @@
 import { MAX_RUN_US } from '../schemas/limits';
-import { INPUTS, RUN_FORMAT, RUN_VERSION, type RawRun, type TapCapture } from '../schemas/run';
+import type { RawRun, TapCapture } from '../schemas/run';
+import { INPUTS, RUN_FORMAT, RUN_VERSION } from '../schemas/runWords';
 import { foldTaps, type FoldedMark } from './foldTaps';
 import type { TapEvent, TapRecording } from './tapRecording';
 
