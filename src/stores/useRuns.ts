@@ -129,10 +129,10 @@ function analysed(row: RunRow, edits: EditEntry[]): Analysis {
   const key = [row.digest, ...edits.map((edit) => edit.row.digest)].join();
   const known = analyses.get(key);
   if (known) return known;
-  const analysis = analyseRun(
-    parsed<RawRun>(row),
-    edits.map((edit) => edit.raw),
-  );
+  const analysis = analyseRun({
+    run: { digest: row.digest, content: parsed<RawRun>(row) },
+    edits: edits.map((edit) => ({ digest: edit.row.digest, content: edit.raw })),
+  });
   analyses.set(key, analysis);
   return analysis;
 }
