@@ -14,7 +14,7 @@ const define = { __APP_VERSION__: JSON.stringify(version) };
 const clientPlugins = () => [
   vue({ template: { transformAssetUrls } }),
   quasar({ sassVariables: at('./src/css/quasar-variables.sass') }),
-  VueI18nPlugin({ include: at('./src/i18n/**/*.json'), strictMessage: true }),
+  VueI18nPlugin({ include: at('./src/i18n/**/*.json'), strictMessage: true, dropMessageCompiler: true }),
 ];
 
 const pwa = () =>
