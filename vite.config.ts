@@ -56,7 +56,14 @@ export default defineConfig(({ mode }) => {
         outDir: 'dist/server',
         target: 'node20',
         sourcemap: true,
-        rollupOptions: { input: { index: at('./server/index.ts'), demo: at('./server/cli/demo.ts') } },
+        rollupOptions: {
+          input: {
+            index: at('./server/index.ts'),
+            demo: at('./server/cli/demo.ts'),
+            backup: at('./server/cli/backup.ts'),
+            restore: at('./server/cli/restore.ts'),
+          },
+        },
       },
     };
   }

@@ -71,6 +71,7 @@ function parameters(schema: z.ZodType | undefined, place: 'path' | 'query'): obj
 
 /** OpenAPI 3.1 takes JSON Schema 2020-12 as it is. What a transform makes of a text is not describable; the text is. */
 function jsonSchema(schema: z.ZodType, io: 'input' | 'output'): object {
-  const { $schema: _, ...described } = z.toJSONSchema(schema, { target: 'draft-2020-12', io, unrepresentable: 'any' });
+  const described = z.toJSONSchema(schema, { target: 'draft-2020-12', io, unrepresentable: 'any' });
+  delete described.$schema;
   return described;
 }

@@ -1,6 +1,6 @@
 import { setImmediate as nextTurn } from 'node:timers/promises';
 import type { Logger } from 'pino';
-import { analyseRun, METHOD } from '@shared/analysis/analyseRun';
+import { analyseRun, METHOD, type Sealed } from '@shared/analysis/analyseRun';
 import type { Analysis } from '@shared/schemas/analysis';
 import type { RawEdit } from '@shared/schemas/edit';
 import type { RawRun } from '@shared/schemas/run';
@@ -54,10 +54,7 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
     for (const run of await loadInputs(database, runIds)) {
       await nextTurn();
       try {
-        const analysis = analyseRun(
-          JSON.parse(run.raw) as RawRun,
-          run.edits.map(({ raw }) => JSON.parse(raw) as RawEdit),
-        );
+        const analysis = analyseRun({ run: unsealed<RawRun>(run), edits: run.edits.map(unsealed<RawEdit>) });
         done.push({ run, edit_seq: run.edits.at(-1)?.seq ?? 0, analysis });
       } catch (error) {
         log.error({ err: error, run: run.id }, 'a run could not be analysed');
@@ -101,7 +98,7 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
            LEFT JOIN analyses a ON a.seq = c.analysis_seq
          WHERE a.seq IS NULL OR a.method <> $1
            OR c.edit_seq < (SELECT max(e.seq) FROM edits e WHERE e.run_id = r.id)`,
-        [METHOD],
+        [METHOD.id],
       );
       queue.add(rows.map(({ id }) => id));
       return rows.length;
@@ -120,28 +117,35 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
 
 export interface Inputs {
   id: string;
+  digest: string;
   raw: string;
   class_id: string | null;
   bench: number | null;
   owner_id: string;
   /** In the server's order, which is the order of folding. */
-  edits: { seq: number; raw: string }[];
+  edits: { seq: number; digest: string; raw: string }[];
 }
 
 async function loadInputs(database: Database, runIds: string[]): Promise<Inputs[]> {
   // Runs are read last: an edit that arrives in between is in the queue again by itself.
-  const edits = await selectWhereIn<{ seq: number; run_id: string; raw: string }>(
+  const edits = await selectWhereIn<{ seq: number; run_id: string; digest: string; raw: string }>(
     database,
-    'SELECT seq, run_id, raw FROM edits',
+    'SELECT seq, run_id, digest, raw FROM edits',
     'run_id',
     runIds,
   );
   edits.sort((a, b) => a.seq - b.seq);
   const runs = await selectWhereIn<Omit<Inputs, 'edits'>>(
     database,
-    'SELECT id, raw, class_id, bench, owner_id FROM runs',
+    'SELECT id, digest, raw, class_id, bench, owner_id FROM runs',
     'id',
     runIds,
   );
   return runs.map((run) => ({ ...run, edits: edits.filter(({ run_id }) => run_id === run.id) }));
 }
+
+/** Both were checked when they came in, and no code changes them. */
+const unsealed = <Content>({ digest, raw }: { digest: string; raw: string }): Sealed<Content> => ({
+  digest,
+  content: JSON.parse(raw) as Content,
+});

@@ -18,7 +18,8 @@ export interface Sealed<T> {
   content: T;
 }
 
-const METHOD = lineMethod;
+/** The method in use; a run analysed by another is analysed anew. */
+export const METHOD = lineMethod;
 
 /**
  * Everything that is computed from a run and its edits: the one entry for phone and server, which

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { Bench, Uuid, WallMs } from './common';
+import { Bench, Line, Uuid, WallMs } from './common';
 import { MAX_BENCH } from './limits';
 
 /** People, classes and signing in. */
@@ -19,7 +19,7 @@ export const ClassCode = z
       .string()
       .regex(new RegExp(`^[${CLASS_CODE_ALPHABET}]{6}$`), 'a class code has six letters or digits, like K4R7MP'),
   );
-export const Nickname = z.string().trim().min(1, 'a nickname or roster number is needed').max(24);
+export const Nickname = Line.min(1, 'a nickname or roster number is needed').max(24);
 export const Pin = z.string().regex(/^\d{6}$/, 'a PIN has six digits');
 export const Email = z
   .string()
@@ -27,7 +27,7 @@ export const Email = z
   .toLowerCase()
   .pipe(z.email('an e-mail address looks like name@example.org').max(254));
 export const NewPassword = z.string().min(12, 'a password needs at least 12 characters').max(128);
-export const PersonName = z.string().trim().min(1, 'a name is needed').max(60);
+export const PersonName = Line.min(1, 'a name is needed').max(60);
 
 /** Who is signed in: answered by GET /api/me and kept on the phone for use with no network. */
 export const Me = z.discriminatedUnion('kind', [
@@ -82,9 +82,9 @@ export const NewPinAnswer = z.strictObject({ pin: Pin });
 export const PeopleAnswer = z.strictObject({ staff: z.array(StaffMember), invites: z.array(PendingInvite) });
 
 export const NewClassRequest = z.strictObject({
-  name: z.string().trim().min(1, 'a class needs a name').max(60),
+  name: Line.min(1, 'a class needs a name').max(60),
   /** A word the teacher says aloud, shown before joining so nobody joins the wrong class. */
-  teacher_word: z.string().trim().min(1, 'a word to say aloud is needed').max(30),
+  teacher_word: Line.min(1, 'a word to say aloud is needed').max(30),
 });
 export const ClassView = z.strictObject({
   id: Uuid,

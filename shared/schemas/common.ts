@@ -12,6 +12,11 @@ export const RunUs = z.int().min(0).max(MAX_RUN_US);
 /** Microseconds from the first mark; negative before it. */
 export const SignedRunUs = z.int().min(-MAX_RUN_US).max(MAX_RUN_US);
 export const Bench = z.int().min(1).max(MAX_BENCH);
+/** One line as a person types it: no line breaks, no control signs, nothing that turns the text around it. */
+export const Line = z
+  .string()
+  .trim()
+  .regex(/^[^\p{Cc}\p{Cs}\u2028-\u202e\u2066-\u2069]*$/u, 'only letters, digits and signs that can be seen');
 export const Note = z.string().trim().max(MAX_NOTE);
 
 /** A number with its standard uncertainty, both in the unit the field's name says. */
