@@ -3,8 +3,7 @@ import { MAX_BENCH } from '@shared/schemas/limits';
 import { benchShape, shapePath, SHAPES } from '@/components/charts/markers';
 import { isDark, readChartTheme } from '@/composables/chartTheme';
 
-const looks = (colours: number) =>
-  Array.from({ length: MAX_BENCH }, (_, i) => `${benchShape(i + 1)} ${i % colours}`);
+const looks = (colours: number) => Array.from({ length: MAX_BENCH }, (_, i) => `${benchShape(i + 1)} ${i % colours}`);
 
 it('all benches differ in shape and colour together, by day with five colours and by night with seven', () => {
   expect(new Set(looks(5)).size).toBe(MAX_BENCH);
