@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { Note, Uuid, WallMs } from './common';
+import { EDIT_FORMAT, EDIT_VERSION } from './formats';
 import { MAX_MARKS, MAX_SWINGS } from './limits';
 import { AmplitudeReading, Rig } from './rig';
 
@@ -9,8 +10,7 @@ import { AmplitudeReading, Rig } from './rig';
  * The author is not in here: the server writes down who was signed in.
  */
 
-export const EDIT_FORMAT = 'swaymark-edit';
-export const EDIT_VERSION = 1;
+export { EDIT_FORMAT, EDIT_VERSION };
 
 /** What the checker can notice. */
 export const FLAG_CODES = [

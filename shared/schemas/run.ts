@@ -1,10 +1,11 @@
 import { z } from 'zod';
+import { INPUTS, RUN_FORMAT, RUN_VERSION } from './formats';
 import { Note, RunUs, SignedRunUs, Uuid, WallMs } from './common';
 import { MAX_BLOCKS, MAX_MARKS, MAX_RUN_US, MAX_SWINGS } from './limits';
 import { AmplitudeReading, Rig } from './rig';
-import { INPUTS, RUN_FORMAT, RUN_VERSION } from './runWords';
 
-export { INPUTS, RUN_FORMAT, RUN_VERSION, type TapInput } from './runWords';
+export { INPUTS, RUN_FORMAT, RUN_VERSION };
+export type TapInput = (typeof INPUTS)[number];
 
 /**
  * The raw part of a run: what was recorded, and nothing that is computed or changed later.

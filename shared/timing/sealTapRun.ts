@@ -1,6 +1,6 @@
 import { MAX_RUN_US } from '../schemas/limits';
 import type { RawRun, TapCapture } from '../schemas/run';
-import { INPUTS, RUN_FORMAT, RUN_VERSION } from '../schemas/runWords';
+import { INPUTS, RUN_FORMAT, RUN_VERSION } from '../schemas/formats';
 import { foldTaps, type FoldedMark } from './foldTaps';
 import type { TapEvent, TapRecording } from './tapRecording';
 
