@@ -39,7 +39,12 @@ export function blockAmplitudes(view: RunView, smallPeriod: number, limp: number
     const offCentre = centred * Math.sin((Math.PI * Math.min(Math.abs(limp), smallPeriod / 4)) / smallPeriod);
     const amplitude = amplitudeFromBlock(flag, middle, smallPeriod, offCentre);
     if (amplitude === undefined) continue;
-    const scatter = 1.4826 * quantile(times.map((t) => Math.abs(t - middle)), 0.5);
+    const scatter =
+      1.4826 *
+      quantile(
+        times.map((t) => Math.abs(t - middle)),
+        0.5,
+      );
     const step = view.readingStep / Math.sqrt(6);
     const u = (amplitude * Math.hypot(scatter, step)) / middle / Math.sqrt(size);
     points.push({ swing: group.reduce((sum, block) => sum + block.swing, 0) / size, amplitude, u });

@@ -31,7 +31,11 @@ export const lineMethod: Method = {
     const last = line.swings.at(-1)!;
     const ratio = meanPeriodRatio(amplitudes.curve, 0, last);
     const scatter = timingShares(view, corrected);
-    const doubts = curveDoubts(amplitudes.doubts, (curve) => line.fit(smallPeriodsElapsed(curve, line.swings))!.slope, corrected.slope);
+    const doubts = curveDoubts(
+      amplitudes.doubts,
+      (curve) => line.fit(smallPeriodsElapsed(curve, line.swings))!.slope,
+      corrected.slope,
+    );
     return {
       // Curved residuals of the plain line are the falling amplitude, not jitter: T takes its scatter from the better fit.
       period: {
@@ -77,7 +81,8 @@ function throughMarks(view: RunView): Line | undefined {
   const used = view.marks.filter((mark) => mark.swing !== null);
   const times = used.map((mark) => mark.time);
   const swings = used.map((mark) => mark.swing!);
-  const isOdd = view.swingsPerMark === 0.5 && used.length > 2 ? swings.map((n) => Math.round(2 * n) % 2 === 1) : undefined;
+  const isOdd =
+    view.swingsPerMark === 0.5 && used.length > 2 ? swings.map((n) => Math.round(2 * n) % 2 === 1) : undefined;
   const hasBoth = isOdd?.includes(true) && isOdd.filter((odd) => !odd).length > 1;
   // Two blocks of a gate are one half swing, which tells nothing while the gate may stand off centre.
   if (view.capture.kind === 'gate' && !hasBoth) return undefined;
@@ -135,7 +140,11 @@ function withFlagWidth(view: RunView, fit: AmplitudeFit): AmplitudeFit {
 }
 
 /** What the doubts about the amplitude bring to a result, one line a term. */
-function curveDoubts(doubts: CurveDoubt[], of: (curve: CurveDoubt['curves'][number]) => number, best: number): BudgetLine[] {
+function curveDoubts(
+  doubts: CurveDoubt[],
+  of: (curve: CurveDoubt['curves'][number]) => number,
+  best: number,
+): BudgetLine[] {
   return (['amplitude', 'decay'] as const).flatMap((term): BudgetLine[] => {
     const own = doubts.filter((doubt) => doubt.term === term);
     if (own.length === 0) return [];
@@ -143,7 +152,11 @@ function curveDoubts(doubts: CurveDoubt[], of: (curve: CurveDoubt['curves'][numb
   });
 }
 
-function effect({ curves, weight }: CurveDoubt, of: (curve: CurveDoubt['curves'][number]) => number, best: number): number {
+function effect(
+  { curves, weight }: CurveDoubt,
+  of: (curve: CurveDoubt['curves'][number]) => number,
+  best: number,
+): number {
   const [a, b] = curves.map(of);
   return weight * (b === undefined ? Math.abs(a! - best) : Math.abs(a! - b) / 2);
 }

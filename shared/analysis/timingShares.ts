@@ -28,7 +28,12 @@ export interface Scatter {
 export function timingShares(view: RunView, line: LineFit): Scatter {
   const weights = Math.hypot(...line.slopeWeights);
   const found = slopeUncertainty(line);
-  const reading: BudgetLine = { term: 'reading', type: 'B', u: (weights * view.readingStep) / Math.sqrt(12), dof: null };
+  const reading: BudgetLine = {
+    term: 'reading',
+    type: 'B',
+    u: (weights * view.readingStep) / Math.sqrt(12),
+    dof: null,
+  };
   const scatter: BudgetLine[] = found ? [{ term: 'timing', type: 'A', u: found.u, dof: found.dof }] : [];
   const isFew = line.residuals.length - line.basis.length < FEWEST_SPARE;
   const isByHand = view.capture.kind !== 'gate';

@@ -40,7 +40,9 @@ const LEAST_U = 1e-6;
  * @returns         undefined without a reading
  */
 export function fitAmplitudes(readings: AmplitudePoint[]): AmplitudeFit | undefined {
-  const points = readings.map((point) => ({ ...point, u: Math.max(point.u, LEAST_U) })).sort((a, b) => a.swing - b.swing);
+  const points = readings
+    .map((point) => ({ ...point, u: Math.max(point.u, LEAST_U) }))
+    .sort((a, b) => a.swing - b.swing);
   if (points.length === 0) return undefined;
   const [from, to] = [points[0]!.swing, points.at(-1)!.swing];
   if (from === to) return withoutDecay(points);

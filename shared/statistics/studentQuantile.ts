@@ -9,7 +9,8 @@
  * @see JCGM 100:2008, table G.2; the tail area is the incomplete beta function, Abramowitz & Stegun 26.7.1
  */
 export function studentQuantile(coverage: number, dof: number): number {
-  if (!(coverage > 0 && coverage < 1)) throw new RangeError(`studentQuantile: coverage is ${coverage}, it must be in (0, 1)`);
+  if (!(coverage > 0 && coverage < 1))
+    throw new RangeError(`studentQuantile: coverage is ${coverage}, it must be in (0, 1)`);
   if (!(dof > 0)) throw new RangeError(`studentQuantile: dof is ${dof}, it must be above 0`);
   // From ten million degrees on the difference from the normal distribution is below 1e-6 of t.
   const nu = Math.min(dof, 1e7);
@@ -35,9 +36,7 @@ function incompleteBeta(x: number, y: number, a: number, b: number): number {
   if (y <= 0) return 1;
   const front = Math.exp(a * Math.log(x) + b * Math.log(y) - logBeta(a, b));
   // The fraction converges fast only on its own side of the mean.
-  return x < (a + 1) / (a + b + 2)
-    ? (front * betaFraction(x, a, b)) / a
-    : 1 - (front * betaFraction(y, b, a)) / b;
+  return x < (a + 1) / (a + b + 2) ? (front * betaFraction(x, a, b)) / a : 1 - (front * betaFraction(y, b, a)) / b;
 }
 
 /** Continued fraction, Abramowitz & Stegun 26.5.8, by Lentz's method. */

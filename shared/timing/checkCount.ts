@@ -25,7 +25,12 @@ export function checkCount(view: RunView, known: Known): Finding[] {
   const ratio = found.value / expected.value;
   if (view.swingsPerMark >= 1 && ratio > 0.4 && ratio < 0.6 && offBy(2) < offBy(1) / 4) {
     return [
-      { code: 'half_swings', mark: null, seen: { ...seen, ratio }, choices: ['reread_as_half_swings', 'set_swings', 'keep_flagged'] },
+      {
+        code: 'half_swings',
+        mark: null,
+        seen: { ...seen, ratio },
+        choices: ['reread_as_half_swings', 'set_swings', 'keep_flagged'],
+      },
     ];
   }
   if (view.capture.kind !== 'keyed_total') return [];
@@ -33,7 +38,12 @@ export function checkCount(view: RunView, known: Known): Finding[] {
   const fitting = counts.find((count) => offBy(view.swings! / count) < NEAR);
   if (fitting === undefined) return [];
   return [
-    { code: 'count_from_one', mark: null, seen: { ...seen, swings_that_fit: fitting }, choices: ['set_swings', 'keep_flagged'] },
+    {
+      code: 'count_from_one',
+      mark: null,
+      seen: { ...seen, swings_that_fit: fitting },
+      choices: ['set_swings', 'keep_flagged'],
+    },
   ];
 }
 

@@ -8,6 +8,8 @@ const FEWEST_MARKS = 8;
 const CONFIDENCE = 0.995;
 /** s. Half of the usual reaction to a release; what is less does not matter. */
 const LEAST_LATE = 0.06;
+/** T/T0 at 60°: in a first swing larger than that the averaged amplitude is no judge of one mark. */
+const LARGEST_RATIO = 1.073;
 
 /**
  * A first mark that does not lie on the line of all the others: pressed in reaction to the release, or on
@@ -16,6 +18,7 @@ const LEAST_LATE = 0.06;
 export function checkFirstMark({ marks, capture, swingsPerMark }: RunView, { elapsed }: Known): Finding[] {
   const used = marks.filter((mark) => mark.swing !== null);
   if (capture.kind === 'gate' || used.length < FEWEST_MARKS || elapsed.length !== used.length) return [];
+  if (elapsed[1]! > LARGEST_RATIO * (used[1]!.swing ?? 0)) return [];
   const others = used.slice(1);
   const isOdd = swingsPerMark === 0.5 ? others.map((mark) => Math.round(2 * mark.swing!) % 2 === 1) : undefined;
   const line = fitLine(
@@ -36,7 +39,7 @@ export function checkFirstMark({ marks, capture, swingsPerMark }: RunView, { ela
     {
       code: 'late_first_mark',
       mark: used[0]!.mark,
-      seen: { late_s: late, jitter_s: jitter },
+      seen: { late_ms: 1000 * late, jitter_ms: 1000 * jitter },
       choices: ['leave_out_mark', 'keep_flagged'],
     },
   ];

@@ -37,16 +37,17 @@ export function checkMarks(view: RunView, known: Known): Flag[] {
 /** What the pad wrote down: the clocks parted, or the run was cut short. */
 function checkRecording({ capture, marks }: RunView): Finding[] {
   if (capture.kind !== 'tap') return [];
-  const gaps = new Map<number, number>();
+  const parted = new Map<number, number>();
   for (const event of capture.events) {
     if (event.kind !== 'clock_gap') continue;
     const mark = Math.min(Math.max(event.after_mark, 0), marks.length - 1);
-    gaps.set(mark, (gaps.get(mark) ?? 0) + (event.wall_minus_mono_ms ?? 0));
+    parted.set(mark, (parted.get(mark) ?? 0) + (event.wall_minus_mono_ms ?? 0) / 1000);
   }
-  const parted = [...gaps].map(
-    ([mark, ms]): Finding => ({ code: 'clock_gap', mark, seen: { wall_minus_mono_s: ms / 1000 }, choices: ['keep_flagged'] }),
-  );
-  if (capture.ended !== 'cut_short') return parted;
-  const planned = capture.planned_swings === null ? {} : { planned_swings: capture.planned_swings };
-  return [...parted, { code: 'cut_short', mark: null, seen: { marks: marks.length, ...planned }, choices: ['keep_flagged'] }];
+  const findings = [...parted].map(([mark, wall_minus_mono_s]): Finding => {
+    return { code: 'clock_gap', mark, seen: { wall_minus_mono_s }, choices: ['keep_flagged'] };
+  });
+  if (capture.ended === 'cut_short') {
+    findings.push({ code: 'cut_short', mark: null, seen: { marks: marks.length }, choices: ['keep_flagged'] });
+  }
+  return findings;
 }

@@ -36,7 +36,10 @@ export function formatMeasured(
  * Seconds with a fixed number of decimal places.
  * @example formatSeconds(40.1, { places: 2, decimalMark: ',' }) // '40,10'
  */
-export function formatSeconds(seconds: number, { places = 3, decimalMark = '.' }: FormatOptions & { places?: number } = {}) {
+export function formatSeconds(
+  seconds: number,
+  { places = 3, decimalMark = '.' }: FormatOptions & { places?: number } = {},
+) {
   return withMark(seconds.toFixed(places), decimalMark);
 }
 
