@@ -3,6 +3,8 @@ import type { FoldedMark } from './foldTaps';
 const LEAST_US = 60_000;
 const LEAST_GLOVED_US = 150_000;
 const PART_OF_LAP = 0.15;
+/** One or two laps may be anything: a slow start, a missed pass. They say nothing about the next one yet. */
+const LEAST_LAPS = 3;
 
 /**
  * How soon after a mark a second contact is a bounce of the same finger. Common practice, no source:
@@ -15,7 +17,8 @@ const PART_OF_LAP = 0.15;
  */
 export function bounceGate(marks: readonly FoldedMark[], gloved: boolean): number {
   const least = gloved ? LEAST_GLOVED_US : LEAST_US;
-  return Math.max(least, Math.round(PART_OF_LAP * (medianLap(marks) ?? 0)));
+  const lap = marks.length > LEAST_LAPS ? medianLap(marks) : undefined;
+  return Math.max(least, Math.round(PART_OF_LAP * (lap ?? 0)));
 }
 
 /**

@@ -49,16 +49,13 @@ export function useHoldToStop(stop: () => void) {
     holdTimer = setTimeout(confirm, HOLD_MS);
   }
 
-  function onPointerUp() {
-    if (!isHolding.value) return;
-    calm();
-    ask();
-  }
-
-  /** Keys and screen readers click without a pointer; a pointer's own click is none of this. */
+  /**
+   * A short press asks. On click and not on release: the click comes after it, and would land on what
+   * asking has brought up. A key, or a screen reader, asks and then confirms in the same place.
+   */
   function onClick(event: MouseEvent) {
-    if (event.detail > 0) return;
-    if (isAsking.value) confirm();
+    const isPointer = event.detail > 0;
+    if (isAsking.value && !isPointer) confirm();
     else ask();
   }
 
@@ -78,7 +75,7 @@ export function useHoldToStop(stop: () => void) {
     takeBack,
     on: {
       pointerdown: onPointerDown,
-      pointerup: onPointerUp,
+      pointerup: calm,
       pointerleave: calm,
       pointercancel: calm,
       click: onClick,

@@ -13,13 +13,17 @@ describe('bounceGate', () => {
     expect(bounceGate(at(0, 2_000_000, 4_010_000, 6_000_000), false)).toBe(300_000);
   });
 
+  it('is not widened by one slow lap at the start', () => {
+    expect(bounceGate(at(0, 6_000_000), false)).toBe(60_000);
+  });
+
   it('stays at 60 ms for passes of a 0.317 s half swing', () => {
-    expect(bounceGate(at(0, 317_000, 634_000), false)).toBe(60_000);
+    expect(bounceGate(at(0, 317_000, 634_000, 951_000), false)).toBe(60_000);
   });
 
   it('is at least 150 ms with gloves on', () => {
-    expect(bounceGate(at(0, 634_000), true)).toBe(150_000);
-    expect(bounceGate(at(0, 2_000_000), true)).toBe(300_000);
+    expect(bounceGate(at(0, 634_000, 1_268_000, 1_902_000), true)).toBe(150_000);
+    expect(bounceGate(at(0, 2_000_000, 4_000_000, 6_000_000), true)).toBe(300_000);
   });
 });
 
