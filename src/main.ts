@@ -13,6 +13,7 @@ import App from '@/App.vue';
 import { beginAppUpdate } from '@/composables/useAppUpdate';
 import { i18n } from '@/i18n';
 import { router } from '@/router';
+import { warmFieldPages } from '@/router/warm';
 
 createApp(App)
   .use(createPinia())
@@ -22,3 +23,4 @@ createApp(App)
   .mount('#app');
 
 beginAppUpdate(registerSW);
+void router.isReady().then(() => warmFieldPages());

@@ -9,8 +9,11 @@ type Register = (options: {
   onRegisteredSW: (url: string, registration: ServiceWorkerRegistration | undefined) => void;
 }) => (reload?: boolean) => Promise<void>;
 
-/** waiting: a new version is here. replaced: it took over, and this page still runs the one before. */
-const standing = ref<'current' | 'waiting' | 'replaced'>('current');
+/**
+ * waiting: a new version is here. replaced: it took over, and this page still runs the one before.
+ * missing: a part of the app could not be fetched, for want of a network or because of an update.
+ */
+const standing = ref<'current' | 'waiting' | 'replaced' | 'missing'>('current');
 let takeOver: (() => Promise<void>) | null = null;
 let wasAcceptedHere = false;
 
@@ -34,10 +37,11 @@ export function beginAppUpdate(register: Register, reload = () => location.reloa
       if (registration) setInterval(() => void registration.update().catch(() => undefined), LOOK_AGAIN_MS);
     },
   });
-  // A file of this version is gone from cache and server: say so, and let the person choose when to load again.
-  window.addEventListener('vite:preloadError', () => {
-    standing.value = 'replaced';
-  });
+}
+
+/** Nothing reloads by itself: the line says so, and the person chooses when to load again. */
+export function notePartMissing(): void {
+  if (standing.value === 'current') standing.value = 'missing';
 }
 
 /** For the one quiet line about a new version, on pages where nothing is being timed. */
@@ -45,11 +49,10 @@ export function useAppUpdate(reload = () => location.reload()) {
   /** @returns false, and changes nothing, while a tab of this browser times a run */
   async function accept(): Promise<boolean> {
     if (await isRecording()) return false;
-    if (standing.value === 'replaced') reload();
-    else {
+    if (standing.value === 'waiting') {
       wasAcceptedHere = true;
       await takeOver?.();
-    }
+    } else reload();
     return true;
   }
   return { standing: readonly(standing), accept };

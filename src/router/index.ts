@@ -1,4 +1,5 @@
 import { createRouter, createWebHistory } from 'vue-router';
+import { notePartMissing } from '@/composables/useAppUpdate';
 import { useSession } from '@/stores/useSession';
 import { routes } from './routes';
 
@@ -23,3 +24,6 @@ router.afterEach((to, from) => {
   if (from.matched.length === 0 || to.path === from.path) return;
   requestAnimationFrame(() => document.getElementById('main')?.focus({ preventScroll: true }));
 });
+
+/** A page's file could not be fetched: the line at the top says so; what was on the screen stays. */
+router.onError(notePartMissing);

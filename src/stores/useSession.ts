@@ -26,8 +26,9 @@ export const useSession = defineStore('session', () => {
   const isStaff = computed(() => me.value !== null && me.value.kind !== 'student');
 
   async function enter(who: Me | null): Promise<void> {
-    store.value = markRaw(await openStoreOf(who));
+    const opened = markRaw(await openStoreOf(who));
     me.value = who;
+    store.value = opened;
   }
 
   const ready = begin();

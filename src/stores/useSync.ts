@@ -3,7 +3,7 @@ import { computed, shallowRef, watch } from 'vue';
 import type { ApiError } from '@/api/ApiError';
 import { fetchFeed, sendBatch } from '@/api/sync';
 import { deviceId } from '@/db/appStore';
-import type { LocalStore } from '@/db/localStore';
+import { ownerKey, type LocalStore } from '@/db/localStore';
 import { readMeta } from '@/db/meta';
 import { sendOnceMore, watchWaiting } from '@/db/outbox';
 import { syncRound, type RoundOutcome } from '@/sync/round';
@@ -11,8 +11,12 @@ import { createSchedule, type Schedule } from '@/sync/schedule';
 import { browserLocks } from '@/sync/uploadLock';
 import { useSession } from './useSession';
 
-/** guest: no account to send to. quiet: nothing waits. The rest say what keeps the waiting ones. */
-export type SyncState = 'guest' | 'quiet' | 'waiting' | 'sending' | 'unreachable' | 'signed_out' | 'storage_failed';
+/**
+ * guest: no account to send to. starting: what waits was not counted yet. quiet: nothing waits. The rest say
+ * what keeps the waiting ones.
+ */
+export type SyncState =
+  'guest' | 'starting' | 'quiet' | 'waiting' | 'sending' | 'unreachable' | 'signed_out' | 'storage_failed';
 
 const DESK_IDLE_MS = 4_000;
 const FIELD_IDLE_MS = 30_000;
@@ -21,6 +25,7 @@ const FIELD_IDLE_MS = 30_000;
 export const useSync = defineStore('sync', () => {
   const session = useSession();
   const waiting = shallowRef(0);
+  const isCounted = shallowRef(false);
   const isSending = shallowRef(false);
   const trouble = shallowRef<'unreachable' | 'storage_failed' | null>(null);
   const lastError = shallowRef<ApiError | null>(null);
@@ -32,6 +37,7 @@ export const useSync = defineStore('sync', () => {
     if (isSending.value) return 'sending';
     if (session.standing === 'expired') return 'signed_out';
     if (trouble.value) return trouble.value;
+    if (!isCounted.value) return 'starting';
     return waiting.value > 0 ? 'waiting' : 'quiet';
   });
 
@@ -71,6 +77,7 @@ export const useSync = defineStore('sync', () => {
     const watching = watchWaiting(store).subscribe((now) => {
       const isMore = now > waiting.value;
       waiting.value = now;
+      isCounted.value = true;
       if (isMore) mine.wake();
     });
     mine.wake();
@@ -78,6 +85,7 @@ export const useSync = defineStore('sync', () => {
       watching.unsubscribe();
       mine.stop();
       waiting.value = 0;
+      isCounted.value = false;
       isSending.value = false;
       trouble.value = null;
       lastContact_wall_ms.value = null;
@@ -88,7 +96,7 @@ export const useSync = defineStore('sync', () => {
     () => session.store,
     (store, _before, onCleanup) => {
       schedule = null;
-      if (store && session.me) onCleanup(follow(store));
+      if (store && store.owner !== ownerKey(null)) onCleanup(follow(store));
     },
     { immediate: true, flush: 'sync' },
   );

@@ -2,25 +2,10 @@ import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { ApiError } from '@/api/ApiError';
 import type { RoundOutcome } from '@/sync/round';
 import { createSchedule, type ScheduleParts } from '@/sync/schedule';
+import { locksOfOneBrowser } from '../support/locksOfOneBrowser';
 
 const done = (over: object = {}): RoundOutcome => ({ kind: 'done', sent: 0, expectsMore: false, ...over });
 const unreachable: RoundOutcome = { kind: 'cannot_reach', error: new ApiError('offline', 0, '', 'nothing answered') };
-
-/** The browser's locks as the standard has them, for one name: shared among "tabs". */
-function locksOfOneBrowser(): ScheduleParts['locks'] {
-  let isHeld = false;
-  return {
-    request: async (_name: string, _options: unknown, work: (lock: object | null) => unknown) => {
-      if (isHeld) return work(null);
-      isHeld = true;
-      try {
-        return await work({});
-      } finally {
-        isHeld = false;
-      }
-    },
-  } as unknown as ScheduleParts['locks'];
-}
 
 const tab = (round: () => Promise<RoundOutcome>, over: Partial<ScheduleParts> = {}) =>
   createSchedule({
