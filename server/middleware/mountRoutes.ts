@@ -1,13 +1,14 @@
 import express, { type Express, type RequestHandler } from 'express';
 import type { z } from 'zod';
 import { MAX_BODY_BYTES } from '@shared/schemas/limits';
+import { plainMessage } from '@shared/schemas/plainMessage';
 import type { Deps } from '../deps';
 import { badInput } from '../errors';
 import { authorise } from '../policies/permissions';
 import type { Route } from '../routes/route';
 import { withTryLimit } from './limitTries';
 import { loadActor } from './loadActor';
-import { fieldMessages, plainMessage } from './plainIssues';
+import { fieldMessages } from './fieldMessages';
 
 /** Mounts every route of the list with the same steps in the same order; no route has a way around one. */
 export function mountRoutes(app: Express, routes: readonly Route[], deps: Deps): void {

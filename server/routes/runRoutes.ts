@@ -12,7 +12,7 @@ import { route } from './route';
 const count = (most: number) =>
   z
     .string()
-    .regex(/^\d{1,15}$/, 'a whole number from 0')
+    .regex(/^\d{1,16}$/, 'a whole number from 0')
     .transform(Number)
     .pipe(z.int().min(0).max(most));
 const After = count(Number.MAX_SAFE_INTEGER).default(0);

@@ -2,6 +2,7 @@ import type { ZodType } from 'zod';
 import { canonicalText, digestOf } from './canonical';
 import { EDIT_FORMAT, EDIT_VERSION, RawEdit } from './edit';
 import { MAX_RAW_BYTES } from './limits';
+import { plainMessage } from './plainMessage';
 import { RawRun, RUN_FORMAT, RUN_VERSION } from './run';
 
 export type FormatCode =
@@ -68,7 +69,7 @@ function read<T>(rawText: string, digest: string, { what, schema, format, versio
       `This ${what} was written in version ${shown(content.version)} of its format, and version ${version} is read here. Update the older of the two programs; the ${what} stays safe where it is.`,
     );
   }
-  const checked = schema.safeParse(content);
+  const checked = schema.safeParse(content, { error: plainMessage });
   if (!checked.success) {
     const fields = checked.error.issues.map((issue) => ({ path: issue.path.join('.'), message: issue.message }));
     throw new FormatError('fields', `Some fields of this ${what} are not as its format says: see fields.`, fields);

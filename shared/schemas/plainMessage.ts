@@ -1,7 +1,9 @@
 import type { z } from 'zod';
-import type { FieldMessage } from '../errors';
 
-/** What to say of a field whose schema has no words of its own. */
+/**
+ * What to say of a field whose schema has no words of its own: what was seen and what is expected.
+ * Given to zod as `error` wherever something from outside is read.
+ */
 export function plainMessage(issue: z.core.$ZodRawIssue): string {
   if (issue.code === 'invalid_type') {
     return issue.input === undefined ? 'is missing' : `expected ${issue.expected}, saw ${kindOf(issue.input)}`;
@@ -12,15 +14,6 @@ export function plainMessage(issue: z.core.$ZodRawIssue): string {
   if (issue.code === 'invalid_format') return `not in the form of ${issue.format}`;
   if (issue.code === 'unrecognized_keys') return 'not known here';
   return 'could not be read';
-}
-
-/** Each thing a schema found, by path: `items.3.id`. */
-export function fieldMessages(issues: readonly z.core.$ZodIssue[]): FieldMessage[] {
-  return issues.flatMap((issue) => {
-    const path = issue.path.map(String);
-    if (issue.code !== 'unrecognized_keys') return [{ path: path.join('.'), message: issue.message }];
-    return issue.keys.map((key) => ({ path: [...path, key].join('.'), message: issue.message }));
-  });
 }
 
 const kindOf = (seen: unknown) => (seen === null ? 'null' : Array.isArray(seen) ? 'array' : typeof seen);
