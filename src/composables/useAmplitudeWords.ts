@@ -1,7 +1,7 @@
 import { useI18n } from 'vue-i18n';
 import type { Measured } from '@shared/schemas/common';
 import type { AmplitudeReading } from '@shared/schemas/rig';
-import { formatMeasured, formatSeconds } from '@shared/units/formatMeasured';
+import { formatMeasured } from '@shared/units/formatMeasured';
 import { useSettings } from '@/stores/useSettings';
 
 /** Amplitudes in words: as computed, in degrees; and as read, in the unit they were read in. */
@@ -12,12 +12,12 @@ export function useAmplitudeWords() {
 
   const degrees = ({ value, u }: Measured) => `${formatMeasured(value, u, options()).text}°`;
 
-  function readingWords({ swing, as_read }: AmplitudeReading): string {
+  function readingWords({ swing, as_read, u }: AmplitudeReading): string {
     const amplitude =
       as_read.form === 'angle'
-        ? `${formatSeconds(as_read.mdeg / 1000, { places: 1, ...options() })}°`
+        ? degrees({ value: as_read.mdeg / 1000, u: (2 * u) / 1000 })
         : t('run.amplitude.sideways', {
-            sideways_cm: formatSeconds(as_read.sideways_um / 10_000, { places: 1, ...options() }),
+            sideways: formatMeasured(as_read.sideways_um / 10_000, (2 * u) / 10_000, options()).text,
           });
     return swing > 0 ? t('run.amplitude.at', { amplitude, swing }) : t('run.amplitude.atStart', { amplitude });
   }

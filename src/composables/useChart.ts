@@ -24,6 +24,8 @@ export interface Axis {
   /** Text of a tick at this tick step; left out, the number as it is. */
   tickText?: (tick: number, step: number) => string;
   grid: boolean;
+  /** Steps to choose from; left out, uPlot's own. */
+  steps?: readonly number[];
   /** Least distance between ticks, CSS px. */
   space_px?: number;
 }
@@ -133,6 +135,7 @@ function uplotOptions(picture: Picture, size: { width: number; height: number },
     grid: { show: spec.grid, stroke: theme.line, width: 1 },
     ticks: { show: spec.grid, stroke: theme.line, width: 1, size: spec.tick_px * 0.35 },
     border: { show: true, stroke: theme.soft, width: 1 },
+    ...(spec.steps ? { incrs: [...spec.steps] } : {}),
     ...(spec.ticks ? { splits: [...spec.ticks] } : {}),
     ...(spec.tickText
       ? { values: (_: uPlot, ticks: number[]) => ticks.map((t) => spec.tickText!(t, stepOf(ticks))) }

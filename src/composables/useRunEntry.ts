@@ -1,6 +1,7 @@
 import { computed, type Ref } from 'vue';
 import { useI18n } from 'vue-i18n';
 import { useRuns } from '@/stores/useRuns';
+import { madeAt } from './runTimes';
 
 /** One run of this device's store by its id, with the words of its head. It follows edits and receipts as they come. */
 export function useRunEntry(id: Ref<string>) {
@@ -17,7 +18,7 @@ export function useRunEntry(id: Ref<string>) {
       t(`run.kind.${raw.capture.kind}`),
       row.bench === null ? '' : t('common.bench', { n: row.bench }),
       row.author?.name ?? '',
-      made.value.date,
+      made.value.day,
     ];
     return parts.filter((part) => part !== '').join(' · ');
   });
@@ -26,15 +27,4 @@ export function useRunEntry(id: Ref<string>) {
     return row?.refusal?.code === 'conflict' ? ('conflict' as const) : row?.state;
   });
   return { entry, isLoading: computed(() => !runs.isLoaded), title, lead, chip };
-}
-
-/** Day and time of the device that made the run, in its own zone at the time. */
-function madeAt(made: { wall_ms: number; zone_offset_min: number }): { time: string; date: string } {
-  const local = new Date(made.wall_ms + made.zone_offset_min * 60_000);
-  const part = (options: Intl.DateTimeFormatOptions) =>
-    new Intl.DateTimeFormat('en-GB', { timeZone: 'UTC', ...options }).format(local);
-  return {
-    time: part({ hour: '2-digit', minute: '2-digit' }),
-    date: part({ day: 'numeric', month: 'short', year: 'numeric' }),
-  };
 }

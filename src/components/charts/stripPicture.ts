@@ -11,6 +11,9 @@ interface Strip {
   chosen: number | null;
 }
 
+/** Swings are counted in whole numbers. */
+const WHOLE_STEPS = [1, 2, 5, 10, 20, 50, 100, 200, 500];
+
 /** The residual strip, ready for useChart. */
 export function stripPicture(
   strip: Strip,
@@ -29,7 +32,8 @@ export function stripPicture(
       label: names.x,
       size_px: theme.rem * 1.8,
       grid: false,
-      tickText: (tick) => String(Math.round(tick * 100) / 100),
+      steps: WHOLE_STEPS,
+      tickText: String,
     },
     y: {
       ...type,

@@ -106,7 +106,7 @@ it('a count that fits another number of swings is set by what the person types',
 it('a gate run shows its marks and its budget', async () => {
   const { wrapper } = await openSheet({ capture: gated(), rig: metreRig });
   expect(wrapper.findAll('.pass-table tbody tr')).toHaveLength(21);
-  expect(wrapper.find('.how-got').text()).toContain('Share');
+  expect(wrapper.find('.fold-block').text()).toContain('Share');
 });
 
 it('the table and the strip tell the same numbers', async () => {
@@ -117,13 +117,15 @@ it('the table and the strip tell the same numbers', async () => {
   expect(shown).toContain(String(Math.round(Math.abs(third.residual_s! * 1000))));
 });
 
-it('the history says whether the server agrees digit for digit', async () => {
+it('the server agrees when every printed digit is the same, and a digest of other inputs is no disagreement', async () => {
   const raw = rawRun({ capture: tapped() });
   const digest = digestOf(canonicalText(raw));
   const analysis = analyseRun({ run: { digest, content: raw }, edits: [] });
   const { agreement } = await import('@/components/run/agreement');
   expect(agreement(analysis, structuredClone(analysis))).toBe('agrees');
-  const off = { ...analysis, jitter_s: analysis.jitter_s! + Number.EPSILON };
-  expect(agreement(analysis, off)).toBe('differs');
+  const { period_s } = analysis;
+  const elsewhere = (by: number) => ({ ...analysis, period_s: { ...period_s!, value: period_s!.value + by } });
+  expect(agreement(analysis, elsewhere(1e-15))).toBe('agrees');
+  expect(agreement(analysis, elsewhere(period_s!.expanded_u))).toBe('differs');
   expect(agreement(analysis, { ...analysis, input_digest: 'f'.repeat(64) })).toBe('otherInputs');
 });

@@ -12,13 +12,3 @@ export function markCount({ capture }: RawRun): number {
       return 0;
   }
 }
-
-/** Day and time on this device, for what the server or another person did. */
-export function whenWords(wall_ms: number): string {
-  return new Intl.DateTimeFormat('en-GB', {
-    day: 'numeric',
-    month: 'short',
-    hour: '2-digit',
-    minute: '2-digit',
-  }).format(wall_ms);
-}
