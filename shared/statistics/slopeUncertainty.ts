@@ -14,6 +14,8 @@ export interface SlopeUncertainty {
 /** Below this many points the residuals say next to nothing about their correlation. */
 const FEWEST_FOR_LAG1 = 8;
 const LARGEST_CORRELATION = 0.95;
+/** Fewer would multiply the interval by up to twelve for no better coverage. */
+const FEWEST_DOF = 3;
 
 /**
  * Uncertainty of a least-squares slope when neighbouring points may err together, as taps do: people
@@ -22,7 +24,8 @@ const LARGEST_CORRELATION = 0.95;
  * The residuals' own lag-1 correlation is too low, because the line has taken part of any slow drift;
  * it is corrected for that and raised by half its standard error, and a negative one counts as none:
  * it would make the uncertainty smaller on weak evidence. The factors were set by simulation, with
- * coverage of the 95 % interval between 0.91 and 0.98 for 8 to 81 points and correlation 0 to 0.6.
+ * coverage of the 95 % interval between 0.95 and 0.98 for 8 to 81 points and correlation 0 to 0.3, and
+ * 0.91 to 0.955 at 0.6.
  *
  * @param fit  three or more points more than a line has unknowns to be of use
  * @returns    undefined when no point is left over to judge by
@@ -40,7 +43,7 @@ export function slopeUncertainty(fit: LineFit): SlopeUncertainty | undefined {
   const variance = squares / Math.max(n - taken, 1);
   return {
     u: Math.sqrt(variance * quadraticForm(fit.slopeWeights, rho)),
-    dof: Math.max((free * (1 - rho)) / (1 + rho), 1),
+    dof: Math.max((free * (1 - rho)) / (1 + rho), Math.min(free, FEWEST_DOF)),
     jitter: Math.sqrt(squares / free),
     lag1: lag1 === undefined ? undefined : Math.min(Math.max(lag1, -1), 1),
   };
