@@ -23,11 +23,11 @@ export function readGate(text: string, given: GateChoice | null): GateReading {
   };
 }
 
-/** Columns by their names, else the first two of numbers that do not just count the rows. */
+/** Columns by their names, else the first two of numbers; one that only counts the rows is passed over. */
 export function guessChoice({ columns }: GateTable): GateChoice | null {
   const ofNumbers = columns.filter(({ numbers }) => numbers > 0.5);
-  const times = ofNumbers.filter((column) => !countsRows(column));
-  const pick = times.length > 0 ? times : ofNumbers;
+  // Two columns are both edges, even where blocked happens to read 0, 1, 2 s.
+  const pick = ofNumbers.length > 2 ? ofNumbers.filter((column) => !countsRows(column)) : ofNumbers;
   const cleared = pick.find(({ name }) => /clear|unblock|\bopen|\boff\b/i.test(name));
   const blocked = pick.find((column) => column !== cleared && /block|dark|\bon\b/i.test(column.name)) ?? pick[0];
   if (!blocked) return null;
