@@ -116,6 +116,17 @@ describe('R8: a shared phone', () => {
     expect(await session.store!.runs.toArray()).toMatchObject([{ id: row.id, state: 'waiting' }]);
   });
 
+  it('a store is sent from only by its owner, as the server knows this browser', async () => {
+    plugIn(joinAs(ann));
+    const session = await loadPage();
+    await session.join(body, true);
+    expect(await session.isOwner(`student-${ann.id}`)).toBe(true);
+    expect(await session.isOwner(`student-${ben.id}`)).toBe(false);
+
+    plugIn(joinAs(ben));
+    expect(await (await loadPage()).isOwner(`student-${ann.id}`)).toBe(false);
+  });
+
   it('a sign-out with no network holds, and is told to the server first of all', async () => {
     plugIn(joinAs(ann));
     const session = await loadPage();
