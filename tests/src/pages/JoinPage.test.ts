@@ -1,0 +1,70 @@
+import 'fake-indexeddb/auto';
+import { RouterView } from 'vue-router';
+import { afterEach, beforeEach, expect, it, vi } from 'vitest';
+import { flushPromises } from '@vue/test-utils';
+import { json, plugIn, said, type SentRequest } from '../support/network';
+import { mountApp } from '../support/mountApp';
+import { student } from '../support/samples';
+
+const card = { name: '11B', teacher_word: 'plumb', benches: [{ bench: 3, people: 2 }] };
+let sent: SentRequest[];
+let takes = true;
+beforeEach(() => {
+  takes = true;
+  sent = plugIn((path) => {
+    if (path === '/api/classes/look-up') return json(card);
+    if (path === '/api/join')
+      return takes
+        ? json({ me: student(7), pin: '204611' })
+        : said(409, 'name_taken', 'Bench 7 has a Kite.', 'nickname');
+    return json({ me: null });
+  });
+});
+let close: () => void = () => undefined;
+afterEach(() => close());
+async function mountAt(path: string) {
+  const { wrapper, router } = mountApp(RouterView);
+  close = () => wrapper.unmount();
+  await router.push(path);
+  await flushPromises();
+  return wrapper;
+}
+const sentTo = (path: string) => sent.filter((request) => request.path === path);
+
+it('a link with the code shows the class and its word at once', async () => {
+  const page = await mountAt('/join/k4r-7mp');
+  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  expect(sentTo('/api/classes/look-up')[0]!.body).toEqual({ code: 'K4R7MP' });
+  expect(page.text()).toContain('2 here');
+});
+
+it('bench and nickname join, and the PIN is shown', async () => {
+  const page = await mountAt('/join/K4R7MP');
+  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await page.get('input[value="7"]').setValue();
+  await page.get('input[maxlength="24"]').setValue(' Kite ');
+  await page.get('form').trigger('submit');
+  await vi.waitFor(() => expect(page.text()).toContain('Write this PIN down'));
+  expect(page.text()).toContain('204');
+  expect(sentTo('/api/join')[0]!.body).toEqual({ code: 'K4R7MP', bench: 7, nickname: 'Kite' });
+});
+
+it('a taken name is said beside the field, and what was typed stays', async () => {
+  takes = false;
+  const page = await mountAt('/join/K4R7MP');
+  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await page.get('input[value="7"]').setValue();
+  await page.get('input[maxlength="24"]').setValue('Kite');
+  await page.get('form').trigger('submit');
+  await vi.waitFor(() => expect(page.text()).toContain('Bench 7 has a Kite.'));
+  expect((page.get('input[maxlength="24"]').element as HTMLInputElement).value).toBe('Kite');
+});
+
+it('a code that cannot be one is not sent anywhere', async () => {
+  const page = await mountAt('/join');
+  await page.get('input').setValue('K4R');
+  await page.get('form').trigger('submit');
+  await flushPromises();
+  expect(page.text()).toContain('six letters or digits');
+  expect(sentTo('/api/classes/look-up')).toEqual([]);
+});
