@@ -4,8 +4,8 @@ import type { RunView, ViewMark } from './runView';
 
 /** Laps on either side that tell what a lap is like here: the period itself falls with the amplitude. */
 const NEIGHBOURS = 5;
-/** Thresholds stand this many standard deviations of a lap from one step, but at least half a step. */
-const DEVIATIONS = 3.3;
+/** Thresholds stand this many standard deviations of a mark from one step, at least half a step and at most this much. */
+const DEVIATIONS = 4;
 const LEAST_DISTANCE = 0.5;
 const MOST_DISTANCE = 0.7;
 /** Share of a mark's deviation from the beat that the beat follows. */
@@ -65,14 +65,21 @@ function missed({ mark }: ViewMark, lap: number, typical: number, count: number)
   };
 }
 
+/** By pairs of laps, because the two halves of a swing differ when the mark is off centre. */
 function typicalAround(laps: number[], i: number): number {
-  return quantile(laps.slice(Math.max(0, i - NEIGHBOURS), i + NEIGHBOURS + 1), 0.5);
+  const around = laps.slice(Math.max(0, i - NEIGHBOURS), i + NEIGHBOURS + 1);
+  const pairs = around.slice(1).map((lap, k) => (lap + around[k]!) / 2);
+  return quantile(pairs, 0.5);
 }
 
-/** In laps. The jitter is judged by the middle half of the laps, so the faults looked for do not hide themselves. */
+/**
+ * In laps. Jitter from each lap and the next but one: a limp and a slow change drop out, and by the
+ * median the faults looked for do not hide themselves. A difference of two such laps has 4 times the
+ * variance of a mark.
+ */
 function thresholdDistance(laps: number[]): number {
-  const typical = quantile(laps, 0.5);
-  const deviations = laps.map((lap, i) => Math.abs(lap - typicalAround(laps, i)));
-  const jitter = (1.4826 * quantile(deviations, 0.5)) / Math.SQRT2;
+  const changes = laps.slice(2).map((lap, k) => Math.abs(lap - laps[k]!));
+  const jitter = changes.length === 0 ? 0 : (1.4826 * quantile(changes, 0.5)) / 2;
+  const typical = typicalAround(laps, Math.floor(laps.length / 2));
   return Math.min(Math.max((DEVIATIONS * jitter) / typical, LEAST_DISTANCE), MOST_DISTANCE);
 }

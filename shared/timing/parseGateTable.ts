@@ -60,7 +60,7 @@ function separatorOf(text: string): string {
     .split(/\r\n?|\n/)
     .filter((line) => line.trim() !== '')
     .slice(0, 200);
-  const isUsual = (pattern: RegExp) => lines.filter((line) => pattern.test(line)).length >= 0.8 * lines.length;
+  const isUsual = (pattern: RegExp) => lines.filter((line) => pattern.test(line)).length >= 0.6 * lines.length;
   if (lines.length === 0) return ',';
   if (isUsual(/\t/)) return '\t';
   if (isUsual(/;/)) return ';';
