@@ -4,7 +4,7 @@ import { applyFeed, feedCursor, noteEpoch } from '@/db/feed';
 import type { LocalStore } from '@/db/localStore';
 import { applyVerdicts, outbox, sendOnceMore } from '@/db/outbox';
 import { addEdit, addRun } from '@/db/runs';
-import { EPOCH, feedAnswer, feedRun, OTHER_EPOCH, rawEdit, rawRun, stored } from '../support/samples';
+import { EPOCH, feedAnswer, feedRun, OTHER_EPOCH, rawEdit, rawRun, stored, turnedDown } from '../support/samples';
 
 const NOWHERE = { class_id: null, bench: null };
 const everything = async (store: LocalStore) => ({
@@ -105,7 +105,7 @@ describe('keeping runs and edits', () => {
     const refused = await addRun(store, rawRun(), NOWHERE);
     const received = await addRun(store, rawRun(), NOWHERE);
     await applyVerdicts(store, [
-      { ...refusal(refused), verdict: 'refused' },
+      turnedDown('refused', { type: 'run', id: refused.id, digest: refused.digest }),
       stored({ type: 'run', id: received.id, digest: received.digest }),
     ]);
     await sendOnceMore(store, 'run', refused.id);
@@ -113,6 +113,3 @@ describe('keeping runs and edits', () => {
     expect((await outbox(store, new Set(), 50)).map(({ id }) => id)).toEqual([refused.id]);
   });
 });
-
-const refusal = ({ id, digest }: { id: string; digest: string }) =>
-  ({ type: 'run', id, digest, code: 'too_many', message: 'Over the limit of a day.', fields: [] }) as const;

@@ -53,7 +53,10 @@ export const stored = ({ type, id, digest }: Pick<SyncItem, 'type' | 'id' | 'dig
   receipt: receipt(),
 });
 
-export const turnedDown = (verdict: 'conflict' | 'refused' | 'later', item: SyncItem): Verdict => ({
+export const turnedDown = (
+  verdict: 'conflict' | 'refused' | 'later',
+  item: Pick<SyncItem, 'type' | 'id' | 'digest'>,
+): Verdict => ({
   verdict,
   type: item.type,
   id: item.id,
