@@ -71,7 +71,7 @@ export default defineConfig(({ mode }) => {
     resolve: { alias },
     define,
     plugins: [...clientPlugins(), ...(process.env.VITEST ? [] : [pwa()])],
-    build: { outDir: 'dist/client', target: 'es2022', sourcemap: false },
+    build: { outDir: 'dist/client', target: 'es2022', manifest: true },
     server: { proxy: { '/api': `http://127.0.0.1:${process.env.PORT ?? 4180}` } },
     test: {
       reporters: ['default', at('./tests/support/closingLine.ts')],

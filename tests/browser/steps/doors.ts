@@ -17,7 +17,7 @@ export async function comeBack(
 ): Promise<void> {
   await page.goto(`${url}/return`);
   await page.getByLabel('Class code').fill(student.code);
-  await page.getByRole('group', { name: 'Bench' }).getByText(String(student.bench), { exact: true }).click();
+  await page.getByLabel('Bench', { exact: true }).fill(String(student.bench));
   await page.getByLabel('Nickname or roster number').fill(student.nickname);
   await page.getByLabel('PIN', { exact: true }).fill(student.pin);
   await page.getByRole('button', { name: 'Come back' }).click();
