@@ -5,13 +5,14 @@ import { pinoHttp } from 'pino-http';
 
 /**
  * One line for each request: method, route, status, time and a shortened address. Routes stand as they
- * are declared, never as they were called, because links carry tokens in their path. No headers, no bodies.
+ * are declared, and all that is not the API as 'page', because links carry tokens in their path. No
+ * headers, no bodies.
  */
 export function requestLog(logger: Logger) {
   return pinoHttp<IncomingMessage, ServerResponse>({
     logger,
     quietReqLogger: true,
-    serializers: { req: () => undefined, res: () => undefined, err: (error: unknown) => error },
+    serializers: { req: () => undefined, res: () => undefined },
     customSuccessObject: (req, res, given: { responseTime: number }) => line(req, res, given.responseTime),
     customErrorObject: (req, res, _error, given: { responseTime: number }) => line(req, res, given.responseTime),
     customSuccessMessage: () => 'request',
@@ -24,7 +25,7 @@ function line(req: IncomingMessage, res: ServerResponse, responseTime: number) {
   const { method, route, ip } = req as Request & { route?: { path: string } };
   return {
     method,
-    route: route?.path ?? 'page',
+    route: route?.path.startsWith('/api/') ? route.path : 'page',
     status: res.statusCode,
     ms: responseTime,
     address: shortAddress(ip ?? ''),

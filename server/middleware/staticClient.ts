@@ -19,7 +19,11 @@ export function staticClient(clientDir: string): Router {
   router.get('/{*path}', (req, res, next) => {
     // A file that is gone is gone: the app's page in its place would be run as a script.
     if (basename(req.path).includes('.')) return next();
-    res.sendFile('index.html', { root: clientDir, headers: { 'Cache-Control': 'no-cache' } });
+    const options = { root: clientDir, headers: { 'Cache-Control': 'no-cache' } };
+    res.sendFile('index.html', options, (error) => {
+      if (error && !res.headersSent)
+        res.status(404).type('text/plain').send('The pages have not been built: npm run build.');
+    });
   });
   router.use((_req, res) => {
     res.status(404).type('text/plain').send('There is nothing at this address.');

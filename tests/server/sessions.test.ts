@@ -1,4 +1,4 @@
-import { request as httpRequest } from 'node:http';
+import { request as httpRequest, type IncomingMessage } from 'node:http';
 import { once } from 'node:events';
 import { statSync } from 'node:fs';
 import { join } from 'node:path';
@@ -31,7 +31,7 @@ test('a slow request that ends after sign-out does not sign in again', async () 
   await new Promise((resolve) => setTimeout(resolve, 100));
   must(await student.post('/api/sign-out'));
   slow.end(content.slice(100));
-  const [answer] = (await once(slow, 'response')) as [import('node:http').IncomingMessage];
+  const [answer] = (await once(slow, 'response')) as [IncomingMessage];
   answer.resume();
   expect(answer.statusCode).toBe(401);
   const again = createApiClient(server.url);

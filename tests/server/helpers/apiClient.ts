@@ -11,7 +11,7 @@ export interface Reply {
 export interface SendOptions {
   headers?: Record<string, string>;
   /** Sent as it is, in place of a JSON body. */
-  rawBody?: string | Buffer;
+  rawBody?: string;
 }
 
 export interface ApiClient {
