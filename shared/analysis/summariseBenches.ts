@@ -6,6 +6,7 @@ export interface BenchDot {
   bench: number;
   period_s: number;
   u_s: number;
+  length_m: number | null;
   open_flags: number;
 }
 

@@ -10,12 +10,13 @@ export function useAmplitudeWords() {
   const settings = useSettings();
   const options = () => ({ decimalMark: settings.decimalMark });
 
-  const degrees = ({ value, u }: Measured) => `${formatMeasured(value, u, options()).text}°`;
+  /** ± is twice the standard uncertainty, as everywhere a result is shown. */
+  const degrees = ({ value, u }: Measured) => `${formatMeasured(value, 2 * u, options()).text}°`;
 
   function readingWords({ swing, as_read, u }: AmplitudeReading): string {
     const amplitude =
       as_read.form === 'angle'
-        ? degrees({ value: as_read.mdeg / 1000, u: (2 * u) / 1000 })
+        ? degrees({ value: as_read.mdeg / 1000, u: u / 1000 })
         : t('run.amplitude.sideways', {
             sideways: formatMeasured(as_read.sideways_um / 10_000, (2 * u) / 10_000, options()).text,
           });

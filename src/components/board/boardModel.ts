@@ -6,7 +6,7 @@ export interface BoardModel {
   summary: BenchSummary | undefined;
   /** Runs that have no T0 yet. */
   without: number;
-  /** Shortest and longest length, when they differ by more than a hundredth: then T0 differs for that reason too. */
+  /** Shortest and longest length, when they differ by more than a hundredth. Then the benches have no common period. */
   lengths_m: readonly [number, number] | undefined;
 }
 
@@ -16,11 +16,12 @@ export function boardModel(points: BoardPoint[]): BoardModel {
   const [from, to] = [Math.min(...lengths), Math.max(...lengths)];
   return {
     summary: summariseBenches(
-      timed.map(({ run_id, bench, small_period_s, open_flags }) => ({
+      timed.map(({ run_id, bench, small_period_s, length_m, open_flags }) => ({
         id: run_id,
         bench,
         period_s: small_period_s!.value,
         u_s: small_period_s!.u,
+        length_m,
         open_flags,
       })),
     ),

@@ -15,12 +15,20 @@ interface Words {
   y: string;
   /** A period at this tick step, s. */
   tick: (period_s: number, step_s: number) => string;
+  /** What stands beside a mark, if anything. */
+  beside: (dot: BenchDot) => string;
   /** A period that stands beyond the picture. */
   beyond: (dot: BenchDot) => string;
 }
 
 /** One lane a bench, bench 1 on top; T0 along the foot. `scale` is 1 at 1080 lines. */
-export function dotPicture(summary: BenchSummary, words: Words, size: { height: number }, scale: number): Picture {
+export function dotPicture(
+  summary: BenchSummary,
+  words: Words,
+  size: { height: number },
+  scale: number,
+  hasMiddle: boolean,
+): Picture {
   const { lanes } = summary;
   const laneHeight = (size.height - 3.6 * NAME * scale) / lanes.length;
   const laneType = Math.min(TICK * scale, laneHeight * 0.82);
@@ -48,7 +56,7 @@ export function dotPicture(summary: BenchSummary, words: Words, size: { height: 
       tickText: (tick) => String(lanes[place(tick)]?.bench ?? ''),
     },
     paint: (brush) => {
-      paintMiddle(brush, summary, scale);
+      if (hasMiddle) paintMiddle(brush, summary, scale);
       const marker = Math.min(MARKER * scale, laneHeight * 0.36);
       const sizes = (runs: number) => ({ marker, scale, type: laneType, step: (0.7 * laneHeight) / (runs + 1) });
       lanes.forEach((lane, i) => paintLane(brush, lane, brush.y(place(i)), sizes(lane.dots.length), summary, words));
@@ -83,11 +91,12 @@ function paintLane(brush: Brush, lane: Lane, y: number, sizes: LaneSizes, summar
     // Runs of one bench stand a little above and below its line, so that their bars do not cover each other.
     const own = y + brush.px(sizes.step) * (i - (lane.dots.length - 1) / 2);
     if (summary.beyond.includes(dot)) paintBeyond(brush, dot, own, colour, sizes, words);
-    else paintDot(brush, dot, own, colour, sizes);
+    else paintDot(brush, dot, own, colour, sizes, words.beside(dot));
   });
 }
 
-function paintDot(brush: Brush, dot: BenchDot, y: number, colour: string, { marker, scale }: LaneSizes): void {
+function paintDot(brush: Brush, dot: BenchDot, y: number, colour: string, sizes: LaneSizes, label: string): void {
+  const { marker, scale } = sizes;
   const { px, left, width } = brush;
   const stroke = { colour, width_px: Math.max(1.5, BAR * scale) };
   const from = Math.max(left, brush.x(dot.period_s - 2 * dot.u_s));
@@ -98,6 +107,20 @@ function paintDot(brush: Brush, dot: BenchDot, y: number, colour: string, { mark
       paintLine(brush, [end, y - px(marker * 0.7)], [end, y + px(marker * 0.7)], stroke);
   }
   paintMarker(brush, shapePath(benchShape(dot.bench), marker), brush.x(dot.period_s), y, colour);
+  if (label) paintBeside(brush, label, Math.max(to, brush.x(dot.period_s) + px(marker)), y, sizes);
+}
+
+/** Words to the right of a mark; to the left of the edge when there is no room. */
+function paintBeside(brush: Brush, label: string, from: number, y: number, { type, marker }: LaneSizes): void {
+  const { context, theme, px, left, width } = brush;
+  context.save();
+  context.fillStyle = theme.ink;
+  context.font = `${px(type * 0.85)}px ${theme.font}`;
+  context.textBaseline = 'middle';
+  context.textAlign = 'left';
+  const room = left + width - context.measureText(label).width;
+  context.fillText(label, Math.min(from + px(marker * 0.8), room), y);
+  context.restore();
 }
 
 /** Too far out for the picture: an arrow at the edge, with the number it stands for. */

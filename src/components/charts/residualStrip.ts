@@ -55,6 +55,8 @@ export function stripFinding(analysis: Analysis): Finding {
   const points = stripPoints(analysis).filter((point) => point.residual_ms !== null);
   if (points.length === 0 || analysis.jitter_s === null) return { key: 'run.strip.nothing', named: {} };
   const jitter_ms = Math.round(analysis.jitter_s * 1000);
+  const flagged = points.filter((point) => point.isFlagOpen).length;
+  if (flagged > 0) return { key: 'run.strip.flagged', named: { marks: points.length, jitter_ms, n: flagged } };
   const worst = points.reduce((a, b) => (Math.abs(b.residual_ms!) > Math.abs(a.residual_ms!) ? b : a));
   const named = { marks: points.length, jitter_ms };
   if (Math.abs(worst.residual_ms!) <= OUTSIDE_BAND * analysis.jitter_s * 1000) return { key: 'run.strip.even', named };

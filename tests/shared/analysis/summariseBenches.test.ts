@@ -6,6 +6,7 @@ const dot = (bench: number, period_s: number, u_s = 0.004): BenchDot => ({
   bench,
   period_s,
   u_s,
+  length_m: 1,
   open_flags: 0,
 });
 

@@ -47,7 +47,7 @@ it('a clean tap run shows T0 and g with their uncertainty and no accepted value'
   const { small_period_s, g_m_s2 } = entry().analysis;
   expect(small_period_s!.value).toBeGreaterThan(1.9);
   expect(g_m_s2).not.toBeNull();
-  expect(text).toContain('Small-swing period T₀');
+  expect(text).toContain('Small-amplitude period T₀');
   expect(text).toMatch(/\d\.\d+ plus or minus 0\.\d+ s/);
   expect(text).toMatch(/\d\.\d+ plus or minus \d?\.?\d+ m\/s²/);
   expect(text).toContain('Nothing stands out.');

@@ -5,7 +5,7 @@ import { i18n } from '@/i18n';
 
 const caption = (analysis: Parameters<typeof stripFinding>[0]) => {
   const { key, named } = stripFinding(analysis);
-  return i18n.global.t(key, named);
+  return i18n.global.t(key, named, named.n ?? 1);
 };
 
 it('the caption names the one mark that stands out', () => {
@@ -17,6 +17,14 @@ it('the caption says so when no mark stands out', () => {
   expect(caption(analysisOf([40, -30, 20, 5, -40]))).toBe(
     '5 marks scatter by 40 ms around an even swing; none stands out.',
   );
+});
+
+it('the caption tells of open flags before anything else', () => {
+  const flag = { code: 'double' as const, mark: 1, seen: {}, choices: [], answered: false };
+  expect(caption(analysisOf([0, 300, 0], { flags: [flag] }))).toBe(
+    '3 marks scatter by 40 ms; one of them carries an open flag.',
+  );
+  expect(caption(analysisOf([0, 300, 0], { flags: [{ ...flag, answered: true }] }))).toContain('300 ms late');
 });
 
 it('the caption says when there is no line', () => {
