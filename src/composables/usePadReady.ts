@@ -1,6 +1,5 @@
 import { v7 as uuidv7 } from 'uuid';
 import { onScopeDispose, shallowRef } from 'vue';
-import { useI18n } from 'vue-i18n';
 import { openRecordings } from '@/db/recordings';
 import { useSession } from '@/stores/useSession';
 import { isRecording } from '@/sync/recordingLock';
@@ -12,6 +11,7 @@ import { useRecordingLock } from './useRecordingLock';
 import { useRunPlan } from './useRunPlan';
 import { useSetUpWords } from './useSetUpWords';
 import { useStorageState } from './useStorageState';
+import { useWhen } from './useWhen';
 
 export type PadReadiness = 'loading' | 'no_storage' | 'not_saving' | 'elsewhere' | 'cut_short' | 'ready';
 
@@ -22,7 +22,7 @@ export type PadReadiness = 'loading' | 'no_storage' | 'not_saving' | 'elsewhere'
  * @param isBusy  whether a run is going on this page
  */
 export function usePadReady(isBusy: () => boolean) {
-  const { d } = useI18n();
+  const when = useWhen();
   const session = useSession();
   const plan = useRunPlan();
   const { maker, place } = useMaker();
@@ -63,7 +63,7 @@ export function usePadReady(isBusy: () => boolean) {
   /** Another tab records: tell since when, if the run is this account's. */
   async function standBack(): Promise<void> {
     const [open] = session.store ? await openRecordings(session.store).catch(() => []) : [];
-    since.value = open ? d(open.started_wall_ms, { timeStyle: 'short' }) : '';
+    since.value = open ? when(open.started_wall_ms) : '';
     state.value = 'elsewhere';
   }
 

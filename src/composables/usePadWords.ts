@@ -14,7 +14,7 @@ export function usePadWords(view: Readonly<Ref<PadView>>, plan: RecordingPlan) {
   const heard = ref('');
   const lastDone = ref('');
 
-  const armed = computed(() => t(`pad.armed.${mode}`, { every: step }));
+  const armed = computed(() => t(`pad.armed.${mode}`, { every: step }).split('\n'));
   const left = computed(() => {
     const { phase, swingsLeft, count } = view.value;
     if (phase === 'saving' || phase === 'saved') return t('pad.saving');
