@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import type { EditChange } from '@shared/schemas/edit';
 import type { AmplitudeReading, Rig } from '@shared/schemas/rig';
-import type { Capture, RawRun } from '@shared/schemas/run';
+import type { Capture, RawRun, TapCapture } from '@shared/schemas/run';
 import { FIRST_COUNTS } from '@shared/schemas/run';
 import { RIG_KINDS } from '@shared/schemas/rig';
 import { FLAG_CODES } from '@shared/schemas/edit';
@@ -30,12 +30,12 @@ const tap = fc.record({
     fc.record({ before_mark: fc.integer({ min: 1, max: 40 }), count: fc.integer({ min: 1, max: 50 }) }),
     { maxLength: 3 },
   ),
-  rejected: fc.constant([]),
-  inputs: fc.constant(['touch' as const]),
+  rejected: fc.constant<TapCapture['rejected']>([]),
+  inputs: fc.constant<TapCapture['inputs']>(['touch']),
   clock: fc.record({
     step_us: fc.integer({ min: 0, max: 1_000_000 }),
     isolated: fc.boolean(),
-    anchors: fc.constant([]),
+    anchors: fc.constant<TapCapture['clock']['anchors']>([]),
   }),
   events: fc.array(
     fc.record({
@@ -102,9 +102,11 @@ const rig: fc.Arbitrary<Rig> = fc.record({
   label: fc.constant(''),
 });
 
+const anyCapture: fc.Arbitrary<Capture> = fc.oneof(tap, keyedTotal, keyedSplits, gate);
+
 export const anyRun: fc.Arbitrary<RawRun> = fc
   .record({
-    capture: fc.oneof<fc.Arbitrary<Capture>[]>(tap, keyedTotal, keyedSplits, gate),
+    capture: anyCapture,
     rig: fc.option(rig),
     amplitudes,
   })

@@ -66,7 +66,7 @@ describe('double and missed', () => {
     { lap: 2, jitter: 0.06, most: 0.01 },
     { lap: 1.27, jitter: 0.1, most: 0.02 },
     { lap: 0.63, jitter: 0.06, most: 0.02 },
-    { lap: 0.63, jitter: 0.1, most: 0.15 },
+    { lap: 0.63, jitter: 0.1, most: 0.08 },
   ])(
     'of good runs with laps of $lap s and jitter $jitter s at most $most are flagged',
     ({ lap, jitter, most }) => {

@@ -109,6 +109,7 @@ describe('foldRun', () => {
     const set: EditChange = { kind: 'set_amplitudes', amplitudes: [angleReading(1, 9)] };
     expect(fold(run, halved, set).amplitudes[0]!.swing).toBe(1);
     expect(swings(run, halved, halved)).toEqual([0, 0.5, 1]);
+    expect(fold(run, halved, halved).amplitudes[0]!.swing).toBe(1);
   });
 
   test('setting the swings of marks adds the missing steps where the laps are long', () => {
