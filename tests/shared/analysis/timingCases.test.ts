@@ -32,8 +32,8 @@ describe('line-1', () => {
 
   test('takes the amplitude from the flag’s speed, also 3° off the lowest point', () => {
     expect(analysed('gate-45').analysis.amplitude!.start_deg.value).toBeCloseTo(45, 0);
-    const { value, u } = analysed('gate-off').analysis.amplitude!.start_deg;
-    expect(Math.abs(value - 25)).toBeLessThan(2 * u);
+    // 25° at release, 24.95° a quarter of a swing later; without the gate's offset it would come out at 24.78°.
+    expect(analysed('gate-off').analysis.amplitude!.start_deg.value).toBeCloseTo(24.95, 1);
   });
 
   // Above 90°, or with a tenth of the amplitude gone in a swing, an averaged amplitude is not the motion.
