@@ -2,15 +2,14 @@ import { mount } from '@vue/test-utils';
 import { createPinia, setActivePinia } from 'pinia';
 import { Quasar } from 'quasar';
 import type { Component } from 'vue';
-import { createMemoryHistory, createRouter } from 'vue-router';
+import { createMemoryHistory, createRouter, type RouteLocationRaw } from 'vue-router';
 import { i18n } from '@/i18n';
 import { routes } from '@/router/routes';
 
 /** Mounts a component the way main.ts mounts the app: real stores, real messages, real routes. */
-export function mountApp(component: Component, props: Record<string, unknown> = {}) {
+export function mountApp(component: Component, props: Record<string, unknown> = {}, router = newRouter()) {
   const pinia = createPinia();
   setActivePinia(pinia);
-  const router = createRouter({ history: createMemoryHistory(), routes });
   const wrapper = mount(component, {
     props,
     attachTo: document.body,
@@ -18,3 +17,12 @@ export function mountApp(component: Component, props: Record<string, unknown> = 
   });
   return { wrapper, router };
 }
+
+/** Mounts a page once its address is reached, so that it finds its parameters. */
+export async function mountPage(page: Component, at: RouteLocationRaw) {
+  const router = newRouter();
+  await router.push(at);
+  return mountApp(page, {}, router);
+}
+
+const newRouter = () => createRouter({ history: createMemoryHistory(), routes });

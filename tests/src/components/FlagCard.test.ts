@@ -1,0 +1,67 @@
+import 'fake-indexeddb/auto';
+import { expect, it } from 'vitest';
+import { analyseRun } from '@shared/analysis/analyseRun';
+import { canonicalText, digestOf } from '@shared/schemas/canonical';
+import { EditChange, FLAG_CODES, type FlagCode } from '@shared/schemas/edit';
+import type { RawRun } from '@shared/schemas/run';
+import { keyed, metreRig, tapped, tappedWithDouble, tenDegrees } from '../../factories/captures';
+import { mountApp } from '../support/mountApp';
+import { plugIn } from '../support/network';
+import { rawRun } from '../support/samples';
+import { editFor } from '@/components/run/flagChoices';
+import FlagCard from '@/components/run/FlagCard.vue';
+
+plugIn(() => Promise.reject(new TypeError('no network')));
+
+const { mark_us } = tapped();
+/** A run in which the check finds each flag. */
+const PLANTED: Record<FlagCode, Partial<RawRun>> = {
+  double: { capture: tappedWithDouble() },
+  missed: { capture: tapped({ mark_us: mark_us.filter((_, i) => i !== 10) }) },
+  half_swings: { capture: tapped({ mark_us: mark_us.map((us) => Math.round(us / 2)) }), rig: metreRig },
+  count_from_one: { capture: keyed({ total_us: 38_150_000 }), rig: metreRig, amplitudes: tenDegrees },
+  late_first_mark: { capture: tapped({ mark_us: mark_us.map((us, i) => (i === 0 ? 0 : us - 300_000)) }) },
+  clock_gap: {
+    capture: tapped({ events: [{ kind: 'clock_gap', at_us: 9_000_000, after_mark: 4, wall_minus_mono_ms: 2500 }] }),
+  },
+  cut_short: { capture: tapped({ ended: 'cut_short' }) },
+};
+
+function found(code: FlagCode) {
+  const content = rawRun(PLANTED[code]);
+  const analysis = analyseRun({ run: { digest: digestOf(canonicalText(content)), content }, edits: [] });
+  return { analysis, flag: analysis.flags.find((flag) => flag.code === code)! };
+}
+
+it.each(FLAG_CODES)('%s is told in a sentence with its numbers filled in, and every choice has words', (code) => {
+  const { analysis, flag } = found(code);
+  const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: true });
+  const text = wrapper.text();
+  expect(text).not.toMatch(/[{}]|undefined|NaN|run\.flag/);
+  expect(text).toMatch(/[A-Z].+\d.+\./);
+  for (const button of wrapper.findAll('button')) expect(button.text()).toMatch(/^[A-Z]/);
+  wrapper.unmount();
+});
+
+it.each(FLAG_CODES)('each choice offered for %s makes an edit the server takes', (code) => {
+  const { flag } = found(code);
+  expect(flag.choices.length).toBeGreaterThan(0);
+  for (const choice of flag.choices) {
+    expect(EditChange.safeParse(editFor(flag, choice, 19)).error).toBeUndefined();
+  }
+});
+
+it('the expected period is never told, only how the count stands to it', () => {
+  const { analysis, flag } = found('half_swings');
+  const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: true });
+  expect(wrapper.text()).not.toContain(flag.seen.expected_s!.toFixed(1));
+  wrapper.unmount();
+});
+
+it('whoever may not edit sees the flag and no choices', () => {
+  const { analysis, flag } = found('double');
+  const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: false });
+  expect(wrapper.text()).toContain('Double tap');
+  expect(wrapper.findAll('button')).toEqual([]);
+  wrapper.unmount();
+});
