@@ -51,6 +51,15 @@ it.each(FLAG_CODES)('each choice offered for %s makes an edit the server takes',
   }
 });
 
+it('a first mark that was planted 300 ms late is told in milliseconds', () => {
+  const { analysis, flag } = found('late_first_mark');
+  const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: true });
+  // 300 ms and what the hand's own scatter of 30 ms leaves open.
+  expect(Number(/came (\d+) ms late/.exec(wrapper.text())![1])).toBeGreaterThan(250);
+  expect(Number(/came (\d+) ms late/.exec(wrapper.text())![1])).toBeLessThan(350);
+  wrapper.unmount();
+});
+
 it('the expected period is never told, only how the count stands to it', () => {
   const { analysis, flag } = found('half_swings');
   const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: true });

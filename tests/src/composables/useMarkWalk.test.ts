@@ -16,11 +16,13 @@ it('arrow keys walk from the first mark to the last and stop there', () => {
   expect(walk.point.value?.mark).toBe(10);
 });
 
-it('keys that do not walk are left to the page', () => {
+it('an arrow key walks and does not scroll the page; other keys are left to it', () => {
   const walk = useMarkWalk(points(), ref(undefined));
-  const tab = key('Tab');
+  const [tab, arrow] = [key('Tab'), key('ArrowRight')];
   walk.onKey(tab);
   expect([tab.defaultPrevented, walk.at.value]).toEqual([false, null]);
+  walk.onKey(arrow);
+  expect(arrow.defaultPrevented).toBe(true);
 });
 
 it('a tap picks the mark nearest to it', () => {
