@@ -53,6 +53,7 @@ export default defineConfig(({ mode }) => {
       define,
       build: {
         ssr: true,
+        copyPublicDir: false,
         outDir: 'dist/server',
         target: 'node20',
         sourcemap: true,

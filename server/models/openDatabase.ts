@@ -3,6 +3,7 @@ import { QueryTypes, Sequelize, Transaction, type BindOrReplacements } from 'seq
 import sqlite3 from 'sqlite3';
 import { migrate } from '../migrations/index';
 import { defineModels, type Models } from './defineModels';
+import { keepWriterOpen } from './keepWriterOpen';
 import { createMutex } from './mutex';
 
 export interface Database {
@@ -22,8 +23,8 @@ export interface Database {
 export const DATABASE_FILE = 'swaymark.sqlite3';
 
 /**
- * Opens DATA_DIR/swaymark.sqlite3 and brings its tables up to date. A transaction gets a connection
- * of its own from Sequelize, with SQLite's defaults of synchronous FULL and foreign keys on; a receipt
+ * Opens DATA_DIR/swaymark.sqlite3 and brings its tables up to date. Readers share one connection, the
+ * writer has another, both with SQLite's defaults of synchronous FULL and foreign keys on; a receipt
  * promises durability, so nothing here may lower them.
  */
 export async function openDatabase(dataDir: string): Promise<Database> {
@@ -36,6 +37,7 @@ export async function openDatabase(dataDir: string): Promise<Database> {
     retry: { max: 1 },
     define: { timestamps: false, freezeTableName: true },
   });
+  const dropWriter = keepWriterOpen(sequelize);
   await sequelize.query('PRAGMA journal_mode = WAL');
   await migrate(sequelize);
   const models = defineModels(sequelize);
@@ -44,9 +46,14 @@ export async function openDatabase(dataDir: string): Promise<Database> {
     sequelize,
     models,
     writeTransaction: (write) =>
-      oneAtATime(() =>
-        sequelize.transaction({ type: Transaction.TYPES.IMMEDIATE }, (transaction) => write(transaction)),
-      ),
+      oneAtATime(async () => {
+        try {
+          return await sequelize.transaction({ type: Transaction.TYPES.IMMEDIATE }, write);
+        } catch (error) {
+          await dropWriter();
+          throw error;
+        }
+      }),
     select: (sql, bind, transaction) => sequelize.query(sql, { type: QueryTypes.SELECT, bind, transaction }),
     run: async (sql, bind, transaction) => {
       await sequelize.query(sql, { type: QueryTypes.RAW, bind, transaction });

@@ -85,6 +85,23 @@ test('a transaction that throws leaves nothing behind and lets the next one in',
   expect(await get('y')).toBe('next');
 });
 
+test('a commit that fails is told, leaves nothing behind and does not block the next writer', async () => {
+  const failing = database.writeTransaction(async (transaction) => {
+    // A deferred foreign key is only looked at when the transaction commits.
+    await database.run('PRAGMA defer_foreign_keys = ON', [], transaction);
+    await insertRows(
+      database,
+      'run_deliveries',
+      [{ run_id: 'nowhere', by_id: 'a', device_id: 'b', received_ms: 1 }],
+      transaction,
+    );
+  });
+  await expect(failing).rejects.toThrow(/FOREIGN KEY/);
+  await put('z', 'next');
+  expect(await get('z')).toBe('next');
+  expect(await database.select('SELECT * FROM run_deliveries', [])).toEqual([]);
+});
+
 test.each(['a\u0000b', `'; DROP TABLE runs; --`, '$1 ? :name @x', '🦊\u2028', ''])(
   '%j is stored as it is',
   async (text) => {
