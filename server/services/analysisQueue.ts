@@ -1,4 +1,4 @@
-import { setImmediate as nextTurn } from 'node:timers/promises';
+import { setTimeout as rest } from 'node:timers/promises';
 import type { Logger } from 'pino';
 import { analyseRun, METHOD, type Sealed } from '@shared/analysis/analyseRun';
 import type { Analysis } from '@shared/schemas/analysis';
@@ -23,6 +23,8 @@ export interface AnalysisQueue {
 
 /** Analyses stored in one transaction: enough to share its cost, few enough to be heard of soon. */
 const BATCH = 10;
+/** With more than this ahead nobody waits: a whole class handing in at once gets its receipts first. */
+const MOST_AHEAD = 60;
 
 export function createAnalysisQueue(database: Database, log: Logger, now: () => number): AnalysisQueue {
   const waiting = new Set<string>();
@@ -48,17 +50,18 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
     worker = null;
   }
 
-  /** One run a turn of the event loop: requests go on in between. A run that cannot be computed stops no other. */
+  /** After each run as long a rest as it took, so that requests get half of the time. A run that cannot be computed stops no other. */
   async function computeEach(runIds: string[]): Promise<Computed[]> {
     const done: Computed[] = [];
     for (const run of await loadInputs(database, runIds)) {
-      await nextTurn();
+      const start = performance.now();
       try {
         const analysis = analyseRun({ run: unsealed<RawRun>(run), edits: run.edits.map(unsealed<RawEdit>) });
         done.push({ run, edit_seq: run.edits.at(-1)?.seq ?? 0, analysis });
       } catch (error) {
         log.error({ err: error, run: run.id }, 'a run could not be analysed');
       }
+      await rest(performance.now() - start);
     }
     return done;
   }
@@ -76,7 +79,7 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
     },
     async ready(runIds, withinMs) {
       const deadline = performance.now() + withinMs;
-      while (!isDone(runIds) && !stopped && performance.now() < deadline) {
+      while (!isDone(runIds) && !stopped && waiting.size <= MOST_AHEAD && performance.now() < deadline) {
         await Promise.race([
           new Promise<void>((resolve) => listeners.push(resolve)),
           new Promise<void>((resolve) => setTimeout(resolve, deadline - performance.now()).unref()),
