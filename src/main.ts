@@ -23,4 +23,7 @@ createApp(App)
   .mount('#app');
 
 beginAppUpdate(registerSW);
-void router.isReady().then(() => warmFieldPages());
+void router.isReady().then(() => {
+  // The pad fetches nothing beside what a tap needs; it warms the rest once it stands.
+  if (router.currentRoute.value.name !== 'pad') warmFieldPages();
+});

@@ -9,6 +9,7 @@ import type { RunEvent, TapCapture, TapInput } from '@shared/schemas/run';
 import { bounceGate } from '@shared/timing/bounceGate';
 import { foldTaps } from '@shared/timing/foldTaps';
 import { sealTapRun, type Maker } from '@shared/timing/sealTapRun';
+import { steadiness, type Steadiness } from '@shared/timing/steadiness';
 import type { RejectedTap, TapEvent, TapRecording } from '@shared/timing/tapRecording';
 import { eventWriter } from './eventWriter';
 
@@ -40,6 +41,7 @@ export interface PadView {
   /** The number the tapper says; −1 before the first. */
   count: number;
   swingsLeft: number | null;
+  steadiness: Steadiness | undefined;
   canUndo: boolean;
   canMiss: boolean;
   /** Rows that storage had lost and that were written again at the end. */
@@ -179,6 +181,10 @@ export function useRecorder(options: RecorderOptions) {
       phase,
       count: fold.count,
       swingsLeft: planned_swings === null ? null : Math.max(0, planned_swings - swings),
+      steadiness: steadiness(
+        fold.marks.map((mark) => mark.at_us),
+        swings_per_mark,
+      ),
       canUndo: fold.canUndo,
       canMiss: fold.canMiss,
       rewritten,
@@ -205,8 +211,6 @@ export function useRecorder(options: RecorderOptions) {
   return {
     view: shallowReadonly(view),
     isFailing: writer.isFailing,
-    /** The marks so far, µs on the page's clock; for the steadiness dot. */
-    marks: () => fold.marks,
     hasMark: () => fold.marks.length > 0,
     tap,
     reject,

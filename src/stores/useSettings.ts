@@ -9,6 +9,8 @@ export interface Settings {
   haptics: boolean;
   soundTick: boolean;
   gloveMode: boolean;
+  /** The dot on the pad that says how evenly the taps come. */
+  steadinessDot: boolean;
   decimalMark: '.' | ',';
 }
 
@@ -18,6 +20,7 @@ const DEFAULTS: Settings = {
   haptics: true,
   soundTick: false,
   gloveMode: false,
+  steadinessDot: true,
   decimalMark: '.',
 };
 
