@@ -62,7 +62,7 @@ export function tappedRun(scene: Scene, plan: TapPlan): RawRun {
       })),
     },
     fault === 'cut_short' ? 'cut_short' : 'planned',
-    { app_version: scene.app_version, device_id: scene.device_id },
+    { app_version: scene.app_version, device_id: scene.device_id, cautions_seen_wall_ms: scene.wall_ms },
   );
   return sealed!;
 }
@@ -168,6 +168,7 @@ function keptRun(scene: Scene, plan: TapPlan, pendulum: Pendulum, swings: number
       zone_offset_min: 60,
       app_version: scene.app_version,
       device_id: scene.device_id,
+      cautions_seen_wall_ms: scene.wall_ms,
     },
   };
 }

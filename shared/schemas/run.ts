@@ -120,6 +120,8 @@ export const RawRun = z.strictObject({
     zone_offset_min: z.int().min(-1_000).max(1_000),
     app_version: z.string().max(40),
     device_id: Uuid,
+    /** When the safety cautions were last acknowledged on this device that day; null if they were not. */
+    cautions_seen_wall_ms: WallMs.nullable(),
   }),
 });
 export type RawRun = z.infer<typeof RawRun>;

@@ -1,15 +1,14 @@
 import { RUN_FORMAT, RUN_VERSION } from '../schemas/formats';
 import type { AmplitudeReading, Rig } from '../schemas/rig';
 import type { Capture, GateCapture, KeyedTotalCapture, RawRun } from '../schemas/run';
+import type { Maker } from './sealTapRun';
 
 /** Everything about an entered run that is not its times. Id and clock are the caller's. */
-export interface RunContext {
+export interface RunContext extends Maker {
   id: string;
   /** Wall clock when the reading was entered. */
   wall_ms: number;
   zone_offset_min: number;
-  app_version: string;
-  device_id: string;
   rig: Rig | null;
   amplitudes: AmplitudeReading[];
   note: string;

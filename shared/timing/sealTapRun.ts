@@ -11,10 +11,11 @@ const MOST_REJECTED = 1_000;
 const MOST_EVENTS = 500;
 const MOST_GAP_ANCHORS = 100;
 
-/** Where and with what a run was made. */
+/** Where and with what a run was made, and whether the cautions were read before. */
 export interface Maker {
   app_version: string;
   device_id: string;
+  cautions_seen_wall_ms: number | null;
 }
 
 /**

@@ -15,7 +15,7 @@ interface Recorded {
 
 /** Facts of a raw run in words, none of them computed from its times. */
 export function useRawFacts(recorded: Ref<Recorded>) {
-  const { t } = useI18n();
+  const { t, d } = useI18n();
   const settings = useSettings();
   const seconds = (s: number, places: number) => formatSeconds(s, { places, decimalMark: settings.decimalMark });
   const fact = (key: string, words: string): Fact => ({ name: t(`run.raw.${key}`), words });
@@ -25,6 +25,10 @@ export function useRawFacts(recorded: Ref<Recorded>) {
     if (Math.abs(skew_ms) < 1000) return t('run.raw.skewNone');
     const named = { seconds: seconds(Math.abs(skew_ms) / 1000, 0) };
     return t(skew_ms > 0 ? 'run.raw.skewAhead' : 'run.raw.skewBehind', named);
+  }
+
+  function cautionsWords(seen_ms: number | null): string {
+    return seen_ms === null ? t('run.raw.cautionsNot') : d(seen_ms, { dateStyle: 'medium', timeStyle: 'short' });
   }
 
   function tapFacts({ inputs, rejected, events, ended, clock }: TapCapture): Fact[] {
@@ -67,6 +71,7 @@ export function useRawFacts(recorded: Ref<Recorded>) {
     return [
       ...captureFacts(raw),
       fact('skew', skewWords(row.clock_skew_ms)),
+      fact('cautions', cautionsWords(raw.made.cautions_seen_wall_ms)),
       fact('version', raw.made.app_version),
       fact('digest', row.digest),
     ];

@@ -130,7 +130,13 @@ function rawRun(capture: Capture, parts: RunParts): RawRun {
     rig: null,
     amplitudes: [],
     note: '',
-    made: { wall_ms: 1_750_000_000_000, zone_offset_min: 60, app_version: '0.1.0', device_id: uuid(0xde1ce) },
+    made: {
+      wall_ms: 1_750_000_000_000,
+      zone_offset_min: 60,
+      app_version: '0.1.0',
+      device_id: uuid(0xde1ce),
+      cautions_seen_wall_ms: null,
+    },
     ...parts,
   };
 }

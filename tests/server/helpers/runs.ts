@@ -24,6 +24,7 @@ export function rawRun(changes: Partial<RawRun> = {}): RawRun {
       wall_ms: 1_760_000_000_000,
       zone_offset_min: 0,
       app_version: '0.1.0',
+      cautions_seen_wall_ms: null,
       device_id: '0199d000-0000-7000-8000-000000000001',
     },
     ...changes,

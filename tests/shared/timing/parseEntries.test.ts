@@ -147,6 +147,7 @@ describe('entered runs', () => {
     wall_ms: 1_750_000_000_000,
     zone_offset_min: 120,
     app_version: '0.1.0',
+    cautions_seen_wall_ms: null,
     device_id: uuid(6),
     rig: stringRig(),
     amplitudes: [angleReading(0, 10)],
@@ -163,6 +164,7 @@ describe('entered runs', () => {
       wall_ms: 1_750_000_000_000,
       zone_offset_min: 120,
       app_version: '0.1.0',
+      cautions_seen_wall_ms: null,
       device_id: uuid(6),
     });
   });

@@ -7,7 +7,7 @@ import { sealTapRun } from '@shared/timing/sealTapRun';
 import type { TapEvent } from '@shared/timing/tapRecording';
 import { pad, tapEvents, tapRecording } from '../../factories/tapRecording';
 
-const maker = { app_version: '0.1.0', device_id: '01900000-0000-7000-8000-0000000000aa' };
+const maker = { app_version: '0.1.0', device_id: '01900000-0000-7000-8000-0000000000aa', cautions_seen_wall_ms: null };
 
 function seal(script: Parameters<typeof tapEvents>[0], ended: TapCapture['ended'] = 'held') {
   return sealTapRun(tapRecording({ events: tapEvents(script) }), ended, maker);

@@ -30,7 +30,7 @@ function begin(plan: Partial<RecorderOptions['plan']> = {}, gloved = false) {
       id: crypto.randomUUID(),
       plan: { swings_per_mark: 1, planned_swings: null, rig: null, amplitudes: [], ...plan },
       place: { class_id: null, bench: 3 },
-      maker: { app_version: '0.1.0', device_id: crypto.randomUUID() },
+      maker: { app_version: '0.1.0', device_id: crypto.randomUUID(), cautions_seen_wall_ms: null },
       clock: { step_us: 100, isolated: false },
       gloved: () => gloved,
       now: () => clock.mono,

@@ -28,7 +28,13 @@ export const rawRun = (over: Partial<RawRun> = {}): RawRun => ({
   rig: null,
   amplitudes: [],
   note: '',
-  made: { wall_ms: 1_750_000_000_000, zone_offset_min: 60, app_version: '0.1.0', device_id: DEVICE },
+  made: {
+    wall_ms: 1_750_000_000_000,
+    zone_offset_min: 60,
+    app_version: '0.1.0',
+    device_id: DEVICE,
+    cautions_seen_wall_ms: null,
+  },
   ...over,
 });
 
