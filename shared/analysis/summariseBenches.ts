@@ -28,7 +28,7 @@ export interface BenchSummary {
   spreadIs: 'half' | 'all';
   /** Range for a picture, s; dots beyond it stand at the edge with an arrow and their number. */
   range_s: readonly [number, number];
-  beyond: BenchDot[];
+  beyond: ReadonlySet<BenchDot>;
 }
 
 /**
@@ -59,7 +59,7 @@ export function summariseBenches(dots: BenchDot[]): BenchSummary | undefined {
       : [quantile(middles, 0.25), quantile(middles, 0.75)];
   const median_s = quantile(middles, 0.5);
   const range_s = rangeOf(dots, median_s);
-  const beyond = dots.filter((dot) => dot.period_s < range_s[0] || dot.period_s > range_s[1]);
+  const beyond = new Set(dots.filter((dot) => dot.period_s < range_s[0] || dot.period_s > range_s[1]));
   return { lanes, runs: dots.length, median_s, low_s, high_s, spreadIs, range_s, beyond };
 }
 

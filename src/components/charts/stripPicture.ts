@@ -1,7 +1,6 @@
 import type { Brush, Picture } from '@/composables/useChart';
 import type { ChartTheme } from '@/composables/chartTheme';
 import { paintLine, paintMarker } from './paint';
-import { shapePath } from './markers';
 import { FLAG_SHAPES, stripReach_ms, type StripPoint } from './residualStrip';
 
 interface Strip {
@@ -75,14 +74,14 @@ function paintPoint(brush: Brush, point: StripPoint, radius: number, isChosen: b
   const y = point.residual_ms === null ? brush.top + brush.height - brush.px(9) : brush.y(point.residual_ms);
   if (isChosen) {
     paintLine(brush, [x, brush.top], [x, brush.top + brush.height], { colour: theme.brass, width_px: 1.5 });
-    paintMarker(brush, shapePath('ring', radius + 6), x, y, theme.brass);
+    paintMarker(brush, ['ring', radius + 6], x, y, theme.brass);
   }
-  if (point.isLeftOut) return paintMarker(brush, shapePath('cross', radius), x, y, theme.soft);
-  paintMarker(brush, shapePath('circle', radius), x, y, theme.series[0]!);
+  if (point.isLeftOut) return paintMarker(brush, ['cross', radius], x, y, theme.soft);
+  paintMarker(brush, ['circle', radius], x, y, theme.series[0]!);
   point.flags.forEach((code, i) => {
     // Above its mark, or below when there is no room above.
     const room = y - brush.top > brush.px(18) ? -1 : 1;
     const away = room * brush.px(13 + 12 * i);
-    paintMarker(brush, shapePath(FLAG_SHAPES[code], 5.5), x, y + away, point.isFlagOpen ? theme.alarm : theme.soft);
+    paintMarker(brush, [FLAG_SHAPES[code], 5.5], x, y + away, point.isFlagOpen ? theme.alarm : theme.soft);
   });
 }

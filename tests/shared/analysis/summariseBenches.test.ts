@@ -31,7 +31,7 @@ it('the spread of three benches is all of them', () => {
 it('a bench that counted half swings stands beyond the picture and is not left out', () => {
   const good = [2.0, 2.004, 2.006, 2.009, 2.012].map((period, i) => dot(i + 1, period));
   const summary = summariseBenches([...good, dot(6, 1.003)])!;
-  expect(summary.beyond.map(({ bench }) => bench)).toEqual([6]);
+  expect([...summary.beyond].map(({ bench }) => bench)).toEqual([6]);
   expect(summary.lanes.map(({ bench }) => bench)).toEqual([1, 2, 3, 4, 5, 6]);
   expect(summary.range_s[0]).toBeGreaterThan(1.9);
 });
@@ -39,7 +39,7 @@ it('a bench that counted half swings stands beyond the picture and is not left o
 it('the range holds every bar of a class that agrees', () => {
   const dots = [2.0, 2.004, 2.006, 2.009].map((period, i) => dot(i + 1, period, 0.003));
   const { range_s, beyond } = summariseBenches(dots)!;
-  expect(beyond).toEqual([]);
+  expect(beyond.size).toBe(0);
   expect(range_s[0]).toBeLessThan(2.0 - 0.006);
   expect(range_s[1]).toBeGreaterThan(2.009 + 0.006);
 });
