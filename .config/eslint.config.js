@@ -10,6 +10,11 @@ const mayNotImport = (files, groups, message) => ({
     'no-restricted-imports': ['error', { patterns: groups.map((group) => ({ group: [group].flat(), message })) }],
   },
 });
+/** Functions whose last digits are the engine's own affair: phone and server would print different numbers. */
+const ENGINE_OWN =
+  'sin cos tan asin acos atan atan2 exp expm1 log log1p log10 log2 pow hypot cbrt sinh cosh tanh random'
+    .split(' ')
+    .map((property) => ({ object: 'Math', property, message: 'Use physics/elementary or statistics/hypot.' }));
 const SRC = ['@/**', '**/src/**'];
 const SERVER = ['**/server/**'];
 const within = (folder) => [`@/${folder}/**`, `../${folder}/**`, `../../${folder}/**`];
@@ -49,6 +54,20 @@ export default tseslint.config(
     [SRC, SERVER, 'vue', 'dexie', 'node:*', 'express', 'pinia', 'quasar'],
     'shared imports nothing of ours, no Vue, Node or DOM.',
   ),
+  {
+    files: ['shared/**'],
+    ignores: ['shared/physics/elementary.ts'],
+    rules: {
+      'no-restricted-properties': ['error', ...ENGINE_OWN],
+      'no-restricted-syntax': [
+        'error',
+        {
+          selector: "BinaryExpression[operator='**']:not([right.value=2]):not([left.value=10])",
+          message: 'Engines differ here: use pow of physics/elementary.',
+        },
+      ],
+    },
+  },
   mayNotImport(
     ['src/pages/**', 'src/layouts/**'],
     [SERVER, within('db'), within('api'), within('sync'), DEXIE],

@@ -2,6 +2,8 @@ import type { AmplitudePoint } from '../physics/amplitudeCurve';
 import { amplitudeFromBlock } from '../physics/blockSpeed';
 import { quantile } from '../statistics/quantile';
 import type { RunView } from '../timing/runView';
+import { sin } from '../physics/elementary';
+import { hypot } from '../statistics/hypot';
 
 /** Blocks are put together into at most this many groups, each with its median: a chattering block then does no harm. */
 const MOST_GROUPS = 24;
@@ -36,7 +38,7 @@ export function blockAmplitudes(view: RunView, smallPeriod: number, limp: number
     const centred = amplitudeFromBlock(flag, middle, smallPeriod);
     if (centred === undefined) continue;
     // Half periods differ by (4/ω) asin(φ/A) when the gate stands at angle φ.
-    const offCentre = centred * Math.sin((Math.PI * Math.min(Math.abs(limp), smallPeriod / 4)) / smallPeriod);
+    const offCentre = centred * sin((Math.PI * Math.min(Math.abs(limp), smallPeriod / 4)) / smallPeriod);
     const amplitude = amplitudeFromBlock(flag, middle, smallPeriod, offCentre);
     if (amplitude === undefined) continue;
     const scatter =
@@ -46,7 +48,7 @@ export function blockAmplitudes(view: RunView, smallPeriod: number, limp: number
         0.5,
       );
     const step = view.readingStep / Math.sqrt(6);
-    const u = (amplitude * Math.hypot(scatter, step)) / middle / Math.sqrt(size);
+    const u = (amplitude * hypot(scatter, step)) / middle / Math.sqrt(size);
     points.push({ swing: group.reduce((sum, block) => sum + block.swing, 0) / size, amplitude, u });
   }
   return points;

@@ -8,6 +8,7 @@ import { blockAmplitudes, FLAG_WIDTH_U } from './blockAmplitudes';
 import type { Fit, Method } from './method';
 import { readAmplitudes } from './readAmplitudes';
 import { clockShare, timingShares } from './timingShares';
+import { hypot } from '../statistics/hypot';
 
 /**
  * Method 'line-1'. T is the slope of the straight line through all marks against the swing number. T0
@@ -148,7 +149,7 @@ function curveDoubts(
   return (['amplitude', 'decay'] as const).flatMap((term): BudgetLine[] => {
     const own = doubts.filter((doubt) => doubt.term === term);
     if (own.length === 0) return [];
-    return [{ term, type: 'B', u: Math.hypot(...own.map((doubt) => effect(doubt, of, best))), dof: null }];
+    return [{ term, type: 'B', u: hypot(...own.map((doubt) => effect(doubt, of, best))), dof: null }];
   });
 }
 
@@ -163,5 +164,5 @@ function effect(
 
 function amplitudeWithU({ curve, doubts }: AmplitudeFit, swing: number) {
   const value = amplitudeAt(curve, swing);
-  return { value, u: Math.hypot(...doubts.map((doubt) => effect(doubt, (c) => amplitudeAt(c, swing), value))) };
+  return { value, u: hypot(...doubts.map((doubt) => effect(doubt, (c) => amplitudeAt(c, swing), value))) };
 }

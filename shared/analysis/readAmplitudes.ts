@@ -1,6 +1,7 @@
 import type { AmplitudePoint } from '../physics/amplitudeCurve';
 import type { ViewAmplitude } from '../timing/runView';
 import { radians } from '../units/angle';
+import { asin, cos } from '../physics/elementary';
 
 const LARGEST = radians(179.5);
 
@@ -15,7 +16,7 @@ export function readAmplitudes(readings: ViewAmplitude[]): AmplitudePoint[] {
     }
     const sine = as_read.sideways_um / as_read.length_um;
     if (!(sine < 1)) return [];
-    const amplitude = Math.asin(sine);
-    return [{ swing, amplitude, u: u / as_read.length_um / Math.cos(amplitude) }];
+    const amplitude = asin(sine);
+    return [{ swing, amplitude, u: u / as_read.length_um / cos(amplitude) }];
   });
 }

@@ -2,6 +2,7 @@ import type { BudgetLine } from '../schemas/analysis';
 import type { LineFit } from '../statistics/fitLine';
 import { slopeUncertainty } from '../statistics/slopeUncertainty';
 import type { RunView } from '../timing/runView';
+import { hypot } from '../statistics/hypot';
 
 /**
  * Standard deviation of one hand-timed instant, s, from 4304 readings of a single anticipated event.
@@ -26,7 +27,7 @@ export interface Scatter {
 
 /** What timing brings to a slope, s: scatter about the line or the hand's known jitter, and the reading step. */
 export function timingShares(view: RunView, line: LineFit): Scatter {
-  const weights = Math.hypot(...line.slopeWeights);
+  const weights = hypot(...line.slopeWeights);
   const found = slopeUncertainty(line);
   const reading: BudgetLine = {
     term: 'reading',

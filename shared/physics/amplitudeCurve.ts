@@ -1,3 +1,5 @@
+import { pow } from './elementary';
+
 /** An amplitude in rad after a number of swings. */
 export interface AmplitudePoint {
   swing: number;
@@ -35,10 +37,10 @@ export function amplitudeAt({ from, to, first, last, law }: AmplitudeCurve, swin
   if (to === from) return clamp(first);
   const share = (swing - from) / (to - from);
   const ratio = last / first;
-  if (Math.abs(law) < 1e-8) return clamp(first * ratio ** share);
-  const power = 1 + (ratio ** law - 1) * share;
+  if (Math.abs(law) < 1e-8) return clamp(first * pow(ratio, share));
+  const power = 1 + (pow(ratio, law) - 1) * share;
   if (power <= 0) return law > 0 ? 0 : LARGEST_AMPLITUDE;
-  return clamp(first * power ** (1 / law));
+  return clamp(first * pow(power, 1 / law));
 }
 
 function clamp(amplitude: number): number {

@@ -1,3 +1,6 @@
+import { asin, sin } from './elementary';
+import { hypot } from '../statistics/hypot';
+
 /**
  * Amplitude from the speed of a flag through a gate near the lowest point:
  * sin²(A/2) = (θ' T0/4π)² + sin²(φ/2), with θ' = width/(distance × blocked time).
@@ -19,6 +22,6 @@ export function amplitudeFromBlock(
   const omega = (2 * Math.PI) / smallPeriod;
   // The mean speed over the flag is lower than at its middle by (ω dt)²/24.
   const angularSpeed = (flag / blockedTime) * (1 + (omega * blockedTime) ** 2 / 24);
-  const half = Math.hypot(angularSpeed / (2 * omega), Math.sin(offCentre / 2));
-  return half < 1 ? 2 * Math.asin(half) : undefined;
+  const half = hypot(angularSpeed / (2 * omega), sin(offCentre / 2));
+  return half < 1 ? 2 * asin(half) : undefined;
 }

@@ -1,6 +1,7 @@
 import { cholesky } from '../statistics/invert';
 import { leastSquares } from '../statistics/leastSquares';
 import { amplitudeAt, type AmplitudeCurve, type AmplitudePoint } from './amplitudeCurve';
+import { exp } from './elementary';
 
 /** A one-standard-uncertainty change of the curve, both ways, independent of the others. */
 export interface CurveDoubt {
@@ -100,7 +101,7 @@ function withoutDecay(points: AmplitudePoint[]): AmplitudeFit {
   const level = constant(points);
   const { from, first } = level.curve;
   const lost = MOST_LOST + MOST_LOST_PER_RAD * first;
-  const fastest = { from, to: from + 1, first, last: first * Math.exp(-lost), law: 0 };
+  const fastest = { from, to: from + 1, first, last: first * exp(-lost), law: 0 };
   // Anything from no decay to the fastest, taken as rectangular about its no-decay end.
   return { ...level, doubts: [...level.doubts, { term: 'decay', curves: [fastest], weight: 1 / Math.sqrt(3) }] };
 }

@@ -1,3 +1,5 @@
+import { cos, sin } from './elementary';
+
 /**
  * T/T0 of an undamped pendulum: how much longer a swing of this amplitude takes than a very small one.
  * T/T0 = 1/agm(1, cos(A/2)); the same for every rigid pendulum.
@@ -12,7 +14,7 @@
 export function periodRatio(amplitude: number): number {
   mustBeAmplitude('periodRatio', amplitude);
   let a = 1;
-  let b = Math.cos(amplitude / 2);
+  let b = cos(amplitude / 2);
   while (a - b > 1e-9 * a) [a, b] = [(a + b) / 2, Math.sqrt(a * b)];
   return 2 / (a + b); // the next step would change it by (a − b)²/16 only
 }
@@ -29,11 +31,11 @@ export function periodRatio(amplitude: number): number {
 export function periodRatioSlope(amplitude: number): number {
   mustBeAmplitude('periodRatioSlope', amplitude);
   if (amplitude === 0) return 0;
-  const k = Math.sin(amplitude / 2);
-  const kPrime = Math.cos(amplitude / 2);
+  const k = sin(amplitude / 2);
+  const kPrime = cos(amplitude / 2);
   let a = 1;
   let b = kPrime;
-  let c = Math.sin(amplitude / 4) ** 2; // (a − b)/2 without the cancellation at small amplitudes
+  let c = sin(amplitude / 4) ** 2; // (a − b)/2 without the cancellation at small amplitudes
   let weight = 1;
   let sum = (k * k) / 2;
   while (c > 1e-14) {

@@ -2,6 +2,7 @@ import type { Measured } from '../schemas/common';
 import type { Rig } from '../schemas/rig';
 import { GRAVITY_U_ANYWHERE, smallPeriodFrom, STANDARD_GRAVITY } from './gravity';
 import { pivotToCentre } from './rigLength';
+import { hypot } from '../statistics/hypot';
 
 const M_PER_UM = 1e-6;
 
@@ -31,7 +32,7 @@ export function reducedLength(rig: Rig): Measured | undefined {
   const perOffset = 1 - (shape * size ** 2) / offset ** 2;
   // On the rim the offset is half the diameter and not a reading of its own.
   const onRim = rig.pivot_offset_um === null;
-  return { value, u: onRim ? u * Math.abs(perSize + perOffset / 2) : u * Math.hypot(perSize, perOffset) };
+  return { value, u: onRim ? u * Math.abs(perSize + perOffset / 2) : u * hypot(perSize, perOffset) };
 }
 
 /**
@@ -46,7 +47,7 @@ export function expectedPeriod(rig: Rig): Measured | undefined {
   const length = reducedLength(rig);
   if (length === undefined || !(length.value > 0)) return undefined;
   const value = smallPeriodFrom(length.value, STANDARD_GRAVITY);
-  return { value, u: (value / 2) * Math.hypot(length.u / length.value, GRAVITY_U_ANYWHERE / STANDARD_GRAVITY) };
+  return { value, u: (value / 2) * hypot(length.u / length.value, GRAVITY_U_ANYWHERE / STANDARD_GRAVITY) };
 }
 
 function stringAndBob(rig: Rig): Measured | undefined {

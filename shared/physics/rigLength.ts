@@ -1,5 +1,6 @@
 import type { Measured } from '../schemas/common';
 import type { LengthReading, Rig } from '../schemas/rig';
+import { hypot } from '../statistics/hypot';
 
 const M_PER_UM = 1e-6;
 
@@ -23,7 +24,7 @@ export function pivotToCentre(rig: Rig): Measured | undefined {
   const u = (rig.length_u_um * M_PER_UM) / Math.sqrt(centres.length);
   // Radius from a diameter read with the same rule: u/2. It cancels where top and bottom were both read.
   const uRadius = ((rig.length_u_um * M_PER_UM) / 2) * average(usable.map(side));
-  return { value: mean, u: Math.hypot(Math.max(u, scatterOfMean(centres)), uRadius) };
+  return { value: mean, u: hypot(Math.max(u, scatterOfMean(centres)), uRadius) };
 }
 
 /** m; from the diameter, or from readings to the top and to the bottom. */

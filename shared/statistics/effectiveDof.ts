@@ -1,3 +1,5 @@
+import { hypot } from './hypot';
+
 /** One share of an uncertainty. */
 export interface Share {
   u: number;
@@ -16,13 +18,14 @@ export function effectiveDof(shares: readonly Share[]): number | null {
   const largest = Math.max(0, ...shares.map(({ u }) => u));
   if (largest === 0) return null;
   // Relative to the largest, so that fourth powers of very small numbers do not vanish.
-  const square = shares.reduce((sum, { u }) => sum + (u / largest) ** 2, 0);
-  const fourth = shares.reduce((sum, { u, dof }) => sum + (dof === null ? 0 : (u / largest) ** 4 / dof), 0);
-  const dof = square ** 2 / fourth;
+  const parts = shares.map(({ u, dof }) => ({ variance: (u / largest) ** 2, dof }));
+  const variance = parts.reduce((sum, part) => sum + part.variance, 0);
+  const fourth = parts.reduce((sum, part) => sum + (part.dof === null ? 0 : part.variance ** 2 / part.dof), 0);
+  const dof = variance ** 2 / fourth;
   return dof < 1e9 ? dof : null;
 }
 
 /** Root of the sum of squares of independent shares. */
 export function combinedUncertainty(shares: readonly Share[]): number {
-  return Math.hypot(...shares.map(({ u }) => u));
+  return hypot(...shares.map(({ u }) => u));
 }

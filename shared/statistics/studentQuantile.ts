@@ -1,3 +1,5 @@
+import { exp, log } from '../physics/elementary';
+
 /**
  * Quantile of Student's t: the factor t such that a share `coverage` of the distribution lies within ±t.
  *
@@ -19,10 +21,10 @@ export function studentQuantile(coverage: number, dof: number): number {
   let [low, high] = [-20, 60];
   for (let i = 0; i < 200 && high - low > 1e-14 * Math.max(1, Math.abs(high)); i += 1) {
     const middle = (low + high) / 2;
-    if (areaOutside(Math.exp(middle), nu) > outside) low = middle;
+    if (areaOutside(exp(middle), nu) > outside) low = middle;
     else high = middle;
   }
-  return Math.exp((low + high) / 2);
+  return exp((low + high) / 2);
 }
 
 function areaOutside(t: number, nu: number): number {
@@ -34,7 +36,7 @@ function areaOutside(t: number, nu: number): number {
 function incompleteBeta(x: number, y: number, a: number, b: number): number {
   if (x <= 0) return 0;
   if (y <= 0) return 1;
-  const front = Math.exp(a * Math.log(x) + b * Math.log(y) - logBeta(a, b));
+  const front = exp(a * log(x) + b * log(y) - logBeta(a, b));
   // The fraction converges fast only on its own side of the mean.
   return x < (a + 1) / (a + b + 2) ? (front * betaFraction(x, a, b)) / a : 1 - (front * betaFraction(y, b, a)) / b;
 }
@@ -70,10 +72,10 @@ function logGamma(z: number): number {
   let shift = 0;
   let x = z;
   while (x < 15) {
-    shift += Math.log(x);
+    shift += log(x);
     x += 1;
   }
   const s = 1 / (x * x);
   const series = (1 / 12 - s * (1 / 360 - s * (1 / 1260 - s * (1 / 1680 - s / 1188)))) / x;
-  return (x - 0.5) * Math.log(x) - x + 0.5 * Math.log(2 * Math.PI) + series - shift;
+  return (x - 0.5) * log(x) - x + 0.5 * log(2 * Math.PI) + series - shift;
 }

@@ -1,6 +1,7 @@
 import { expectedPeriod } from '../physics/reducedLength';
 import type { Finding, Known } from './checkMarks';
 import type { RunView } from './runView';
+import { hypot } from '../statistics/hypot';
 
 /** A count is in doubt when the period is this many standard uncertainties off … */
 const FAR = 3;
@@ -18,7 +19,7 @@ export function checkCount(view: RunView, known: Known): Finding[] {
   const found = known.smallPeriod ?? withoutAmplitude(known);
   if (!expected || !found || view.swings === null || view.capture.kind === 'gate') return [];
   const offBy = (factor: number) =>
-    Math.abs(found.value * factor - expected.value) / Math.hypot(found.u * factor, expected.u);
+    Math.abs(found.value * factor - expected.value) / hypot(found.u * factor, expected.u);
   if (offBy(1) <= FAR) return [];
 
   const seen = { swings: view.swings, period_s: found.value, expected_s: expected.value };
@@ -50,5 +51,5 @@ export function checkCount(view: RunView, known: Known): Finding[] {
 function withoutAmplitude({ period }: Known) {
   if (!period) return undefined;
   const value = period.value / (1 + UNKNOWN_AMPLITUDE.excess);
-  return { value, u: Math.hypot(period.u, value * UNKNOWN_AMPLITUDE.u) };
+  return { value, u: hypot(period.u, value * UNKNOWN_AMPLITUDE.u) };
 }

@@ -2,6 +2,7 @@ import { fitLine } from '../statistics/fitLine';
 import { studentQuantile } from '../statistics/studentQuantile';
 import type { Finding, Known } from './checkMarks';
 import type { RunView } from './runView';
+import { hypot } from '../statistics/hypot';
 
 const FEWEST_MARKS = 8;
 /** One good run in two hundred may be flagged. */
@@ -31,7 +32,7 @@ export function checkFirstMark({ marks, capture, swingsPerMark }: RunView, { ela
   const jitter = Math.sqrt(line.residuals.reduce((sum, r) => sum + r * r, 0) / spare);
   // The line is carried back by one step, which doubts of its slope and its level widen.
   const mean = elapsed.slice(1).reduce((sum, x) => sum + x, 0) / others.length;
-  const weights = Math.hypot(...line.slopeWeights);
+  const weights = hypot(...line.slopeWeights);
   const u = jitter * Math.sqrt(1 + 1 / others.length + ((mean - elapsed[0]!) * weights) ** 2);
   const late = used[0]!.time - (line.intercept + line.slope * elapsed[0]!);
   if (Math.abs(late) <= Math.max(studentQuantile(CONFIDENCE, spare) * u, LEAST_LATE)) return [];
