@@ -6,6 +6,8 @@ export interface BoardModel {
   summary: BenchSummary | undefined;
   /** Runs that have no T0 yet. */
   without: number;
+  /** Runs with a T0 whose flags nobody has answered yet: shown hollow. */
+  flagged: number;
   /** Shortest and longest length, when they differ by more than a hundredth. Then the benches have no common period. */
   lengths_m: readonly [number, number] | undefined;
 }
@@ -26,6 +28,7 @@ export function boardModel(points: BoardPoint[]): BoardModel {
       })),
     ),
     without: points.length - timed.length,
+    flagged: timed.filter((point) => point.open_flags > 0).length,
     lengths_m: lengths.length > 1 && to > from * 1.01 ? [from, to] : undefined,
   };
 }

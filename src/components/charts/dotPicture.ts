@@ -94,8 +94,9 @@ function paintLane(brush: Brush, lane: Lane, y: number, sizes: LaneSizes, summar
   }));
   const within = placed.filter(({ dot }) => !summary.beyond.has(dot));
   paintBars(brush, within, colour, sizes);
-  const stamp = markerStamp(brush, [benchShape(lane.bench), sizes.marker], colour);
+  const marker = [benchShape(lane.bench), sizes.marker] as const;
   for (const { dot, y: own } of within) {
+    const stamp = markerStamp(brush, marker, colour, dot.open_flags > 0 ? 'hollow' : 'full');
     stampAt(brush, stamp, brush.x(dot.period_s), own);
     const label = words.beside(dot);
     if (label) paintBeside(brush, label, dot, own, sizes);

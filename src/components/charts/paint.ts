@@ -8,10 +8,18 @@ const stamps = new Map<string, HTMLCanvasElement>();
 /** Room for the farthest tip of a star and the outline, in radii. */
 const REACH = 1.6;
 
-/** A marker drawn once, to be stamped thousands of times: filled, and outlined so that neighbours stay apart. */
-export function markerStamp(brush: Brush, [shape, radius_px]: Marker, colour: string): HTMLCanvasElement {
+/**
+ * A marker drawn once, to be stamped thousands of times: filled, and outlined so that neighbours stay apart;
+ * or hollow, for what is not settled.
+ */
+export function markerStamp(
+  brush: Brush,
+  [shape, radius_px]: Marker,
+  colour: string,
+  fill: 'full' | 'hollow' = 'full',
+): HTMLCanvasElement {
   const { theme, px } = brush;
-  const key = [shape, radius_px, colour, theme.ground, px(1)].join();
+  const key = [shape, radius_px, colour, fill, theme.ground, px(1)].join();
   const known = stamps.get(key);
   if (known) return known;
   const half = Math.ceil(px(radius_px * REACH));
@@ -20,11 +28,13 @@ export function markerStamp(brush: Brush, [shape, radius_px]: Marker, colour: st
   const path = new Path2D(shapePath(shape, radius_px));
   context.translate(half, half);
   context.scale(px(1), px(1));
-  context.fillStyle = colour;
-  context.strokeStyle = theme.ground;
-  context.lineWidth = 1.5;
-  context.stroke(path);
+  const isFull = fill === 'full';
+  context.fillStyle = isFull ? colour : theme.ground;
+  context.strokeStyle = isFull ? theme.ground : colour;
+  context.lineWidth = isFull ? 1.5 : Math.max(2, radius_px * 0.3);
+  if (isFull) context.stroke(path);
   context.fill(path);
+  if (!isFull) context.stroke(path);
   stamps.set(key, stamp);
   return stamp;
 }

@@ -94,6 +94,7 @@ it('a count that fits another number of swings is set by what the person types',
   const capture = keyed({ total_us: 38_150_000 });
   const { wrapper, entry } = await openSheet({ capture, rig: metreRig, amplitudes: tenDegrees });
   expect(wrapper.text()).toContain('the time fits 19 swings; 20 were counted');
+  expect(wrapper.text()).toContain('Not settled');
   await wrapper
     .findAll('button')
     .find((one) => one.text() === 'Set the number of swings')!
@@ -101,6 +102,7 @@ it('a count that fits another number of swings is set by what the person types',
   await wrapper.find('.flag-card form').trigger('submit');
   await vi.waitFor(() => expect(entry().edits[0]?.raw.change).toEqual({ kind: 'set_swings', swings: 19 }));
   expect(entry().analysis.swings).toBe(19);
+  await vi.waitFor(() => expect(wrapper.text()).not.toContain('Not settled'));
 });
 
 it('a gate run shows its marks and its budget', async () => {

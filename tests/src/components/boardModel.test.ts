@@ -18,6 +18,11 @@ it('runs without T0 are counted and not drawn', () => {
   expect(model.summary?.runs).toBe(1);
 });
 
+it('a run with an open flag is counted as one to show hollow, unless it has no T0 to show', () => {
+  const points = [point(1), point(2, { open_flags: 1 }), point(3, { open_flags: 2, small_period_s: null })];
+  expect(boardModel(points).flagged).toBe(1);
+});
+
 it('lengths that differ are told, those that agree within a hundredth are not', () => {
   expect(boardModel([point(1), point(2, { length_m: 0.55 })]).lengths_m).toEqual([0.55, 1]);
   expect(boardModel([point(1), point(2, { length_m: 1.004 })]).lengths_m).toBeUndefined();
