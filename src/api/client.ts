@@ -1,5 +1,6 @@
 import type { z } from 'zod';
 import { ApiError } from './ApiError';
+import { readTolerantly } from './tolerant';
 
 /** Schemas load when first needed: zod is not in the way of the tap pad. */
 export type LazySchema<T> = () => Promise<z.ZodType<T>>;
@@ -9,7 +10,7 @@ export interface RequestOptions<T> {
   /** Sent as JSON. */
   body?: unknown;
   headers?: Record<string, string>;
-  /** Shape of a good answer. An answer of any other shape is not an answer. */
+  /** Shape of a good answer; fields beside it are passed over. An answer of any other shape is not an answer. */
   answer: LazySchema<T>;
   /** Until the whole answer is here, ms. Default 15 s. */
   timeout_ms?: number;
@@ -27,9 +28,9 @@ export async function request<T>(path: string, options: RequestOptions<T>): Prom
     throw new ApiError('not_ours', response.status, '', 'the address leads somewhere else');
   if (!response.ok) throw await refusalFrom(response, text);
   const content = isJson(response) ? parse(text) : undefined;
-  const parsed = (await load(options.answer)).safeParse(content);
-  if (!parsed.success) throw new ApiError('not_ours', response.status, '', 'the answer is not one of this server');
-  return parsed.data;
+  const answer = readTolerantly(await load(options.answer), content);
+  if (answer === undefined) throw new ApiError('not_ours', response.status, '', 'the answer is not one of this server');
+  return answer;
 }
 
 /** One exchange, the reading of the body included, within the time allowed. */
@@ -62,7 +63,7 @@ async function exchange(path: string, options: RequestOptions<unknown>): Promise
 async function refusalFrom(response: Response, text: string): Promise<ApiError> {
   const { status } = response;
   const shape = await load(() => import('@shared/schemas/errors').then((module) => module.ErrorAnswer));
-  const ours = shape.safeParse(isJson(response) ? parse(text) : undefined).data?.error;
+  const ours = readTolerantly(shape, isJson(response) ? parse(text) : undefined)?.error;
   if (status >= 500 || status === 429)
     return new ApiError('server', status, ours?.code ?? '', ours?.message ?? `status ${status}`, ours?.fields);
   if (!ours) return new ApiError('not_ours', status, '', `status ${status} from something else`);

@@ -3,15 +3,15 @@ import { request } from './client';
 
 /** Handing in and fetching, one function an endpoint. */
 
-const schemas = () => import('@shared/schemas/sync');
+const readings = () => import('./syncReadings');
 
 export const sendBatch = (body: SyncRequest) =>
   request('/sync', {
     method: 'POST',
     body,
-    answer: () => schemas().then((module) => module.SyncAnswer),
+    answer: () => readings().then((module) => module.SyncReading),
     timeout_ms: 30_000,
   });
 
 export const fetchFeed = (after: number, limit: number) =>
-  request(`/feed?after=${after}&limit=${limit}`, { answer: () => schemas().then((module) => module.FeedAnswer) });
+  request(`/feed?after=${after}&limit=${limit}`, { answer: () => readings().then((module) => module.FeedReading) });

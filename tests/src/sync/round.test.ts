@@ -116,6 +116,19 @@ describe('R6: only a receipt with matching id and digest clears an item', () => 
     expect(await states()).toEqual(['waiting']);
   });
 
+  it('a receipt counts beside an analysis, a verdict and fields of a newer server', async () => {
+    const row = await addRun(store, rawRun(), NOWHERE);
+    plugIn(
+      answering((_path, init) => {
+        const verdicts = itemsOf(init).map((item) => ({ ...stored(item), shelf: 4 }));
+        const newer = { ...syncAnswer([]), analyses: [{ method: 'bayes-1' }], motd: 'hello' };
+        return json({ ...newer, verdicts: [{ verdict: 'postponed' }, ...verdicts] });
+      }),
+    );
+    await round();
+    expect(await store.runs.get(row.id)).toMatchObject({ state: 'received', receipt: { code: 'K7QM' } });
+  });
+
   it('a receipt with id and digest marks the run received and keeps its code', async () => {
     const row = await addRun(store, rawRun(), NOWHERE);
     plugIn(answering(takesAll));
@@ -272,6 +285,14 @@ describe('the feed', () => {
     await round();
     expect(sent).toHaveLength(2);
     expect(await store.runs.count()).toBe(2);
+  });
+
+  it('passes over an item of a kind it does not know, and keeps the rest and the cursor', async () => {
+    const item = { ...feedRun(rawRun()), colour: 'brass' };
+    plugIn(() => json({ ...feedAnswer([], 8), items: [{ type: 'song', seq: 7 }, item] }));
+    await round();
+    expect(await store.runs.count()).toBe(1);
+    expect(await store.meta.get('cursor')).toMatchObject({ content: 8 });
   });
 
   it('expects more while a run handed in has no analysis from the server', async () => {
