@@ -32,7 +32,8 @@ export function fitLine(x: number[], y: number[], isOdd?: boolean[]): LineFit | 
     basis.push(rest.map((v) => v / size));
   }
   const along = basis.at(-1)!;
-  const slopeWeights = along.map((q) => q / dot(along, x));
+  const rise = dot(along, x);
+  const slopeWeights = along.map((q) => q / rise);
   const slope = dot(slopeWeights, y);
   const flat = y.map((value, i) => value - slope * x[i]!);
   const mean = (which: (i: number) => boolean) => average(flat.filter((_, i) => which(i)));
