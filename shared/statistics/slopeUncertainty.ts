@@ -1,5 +1,12 @@
 import type { LineFit } from './fitLine';
 
+/**
+ * Residuals of a fit in which the value of interest is Σ slopeWeights[i] y[i] and the points pull the model
+ * along the columns of `basis` (basis basisᵀ is the hat matrix; columns are shorter than 1 where other
+ * knowledge holds the model back).
+ */
+export type Scattered = Pick<LineFit, 'residuals' | 'slopeWeights' | 'basis'>;
+
 export interface SlopeUncertainty {
   /** Standard uncertainty of the slope. */
   u: number;
@@ -31,9 +38,9 @@ const FEWEST_DOF = 3;
  * @returns    undefined when no point is left over to judge by
  * @see bias of the lag-1 correlation about a fitted trend: Tjøstheim & Paulsen, Biometrika 70, 389 (1983)
  */
-export function slopeUncertainty(fit: LineFit): SlopeUncertainty | undefined {
+export function slopeUncertainty(fit: Scattered): SlopeUncertainty | undefined {
   const n = fit.residuals.length;
-  const unknowns = fit.basis.length;
+  const unknowns = degreesTaken(fit);
   const free = n - unknowns;
   if (free < 1) return undefined;
   const squares = fit.residuals.reduce((sum, r) => sum + r * r, 0);
@@ -49,9 +56,14 @@ export function slopeUncertainty(fit: LineFit): SlopeUncertainty | undefined {
   };
 }
 
-function cautiousCorrelation(lag1: number, fit: LineFit): number {
+/** How many degrees of freedom a basis takes: one a column of unit length. */
+function degreesTaken({ basis }: Scattered): number {
+  return basis.reduce((sum, column) => sum + column.reduce((s, v) => s + v * v, 0), 0);
+}
+
+function cautiousCorrelation(lag1: number, fit: Scattered): number {
   const n = fit.residuals.length;
-  const unknowns = fit.basis.length;
+  const unknowns = degreesTaken(fit);
   // Expected lag-1 of residuals of independent errors is minus this sum over n − unknowns.
   const drift = fit.basis.reduce((sum, column) => sum + neighbours(column), 0) / (n - unknowns);
   const corrected = ((lag1 + drift) * n) / Math.max(n - 2 * unknowns, 2);
@@ -66,8 +78,8 @@ function neighbours(v: number[]): number {
   return sum;
 }
 
-/** vᵀRv with R[i][j] = rho^|i−j|, in one pass. */
-function quadraticForm(v: number[], rho: number): number {
+/** vᵀRv with R[i][j] = rho^|i−j|, in one pass: the variance of Σ v[i] e[i] for errors e of unit variance and lag-1 correlation rho. */
+export function quadraticForm(v: number[], rho: number): number {
   let sum = 0;
   let carried = 0;
   for (const x of v) {
