@@ -1,6 +1,6 @@
 import type { BudgetLine } from '../schemas/analysis';
 import { fitLine } from '../statistics/fitLine';
-import { cholesky } from '../statistics/invert';
+import { semidefiniteRoot } from '../statistics/invert';
 import { slopeUncertainty } from '../statistics/slopeUncertainty';
 import type { RunView } from '../timing/runView';
 import { lineMethod } from './lineMethod';
@@ -79,7 +79,7 @@ function fitOf(view: RunView, { data, fit, decayKnown, doubt }: Found): Fit {
   const timing = timingOf(view, data, fit);
   const others: BudgetLine[] = [
     { term: 'amplitude', type: 'B', u: amplitudeShare(data, fit, places.period), dof: null },
-    { term: 'decay', type: 'B', u: Math.hypot(decayShare(fit, places.period), doubt.u), dof: null },
+    { term: 'decay', type: 'B', u: Math.hypot(decayShare(data, fit, places.period), doubt.u), dof: null },
   ];
   const plain = fitLine(data.swings, data.times, data.isOdd);
   const last = data.swings.length - 1;
@@ -109,7 +109,7 @@ function fitOf(view: RunView, { data, fit, decayKnown, doubt }: Found): Fit {
 
 /** How much each mark counts in an unknown. */
 function markWeights(fit: MotionFit, place: number): number[] {
-  const row = fit.covariance[place]!;
+  const row = fit.within[place]!;
   return fit.residuals.map((_, i) => {
     let sum = 0;
     for (let k = 0; k < row.length; k += 1) sum += row[k]! * fit.slopes.times[k]![i]!;
@@ -120,16 +120,14 @@ function markWeights(fit: MotionFit, place: number): number[] {
 function timingOf(view: RunView, data: MotionData, fit: MotionFit) {
   const slopeWeights = markWeights(fit, fit.places.period);
   const size = Math.hypot(...slopeWeights);
-  const lower = cholesky(fit.covariance);
-  const basis = lower
-    ? lower.map((_, k) =>
-        fit.residuals.map((__, i) => {
-          let sum = 0;
-          for (let j = k; j < lower.length; j += 1) sum += fit.slopes.times[j]![i]! * lower[j]![k]!;
-          return sum / fit.jitter;
-        }),
-      )
-    : [];
+  const lower = semidefiniteRoot(fit.within);
+  const basis = lower.map((_, k) =>
+    fit.residuals.map((__, i) => {
+      let sum = 0;
+      for (let j = k; j < lower.length; j += 1) sum += fit.slopes.times[j]![i]! * lower[j]![k]!;
+      return sum / fit.jitter;
+    }),
+  );
   const found = slopeUncertainty({ residuals: fit.residuals, slopeWeights, basis });
   const byBlocks = blockShare(fit, fit.places.period);
   const isFew = fit.free < FEWEST_SPARE;
@@ -146,7 +144,7 @@ function timingOf(view: RunView, data: MotionData, fit: MotionFit) {
 }
 
 function blockShare(fit: MotionFit, place: number): number {
-  const row = fit.covariance[place]!;
+  const row = fit.within[place]!;
   const counted = fit.blockWeights.map((weight, i) => {
     let sum = 0;
     for (let k = 0; k < row.length; k += 1) sum += row[k]! * fit.slopes.blocked[k]![i]!;
@@ -156,7 +154,7 @@ function blockShare(fit: MotionFit, place: number): number {
 }
 
 function amplitudeShare(data: MotionData, fit: MotionFit, place: number): number {
-  const row = fit.covariance[place]!;
+  const row = fit.within[place]!;
   const counted = data.readings.map(({ u }, i) => {
     const sum = row.reduce((s, c, k) => s + c * fit.slopes.amplitudes[k]![i]!, 0);
     return sum / (u * fit.readingFactor);
@@ -165,10 +163,11 @@ function amplitudeShare(data: MotionData, fit: MotionFit, place: number): number
   return Math.hypot(...counted, byFlag);
 }
 
-function decayShare(fit: MotionFit, place: number): number {
-  const row = fit.covariance[place]!;
-  const counted = fit.places.losses.map((loss, k) => row[loss]! * Math.sqrt(fit.boundPrecisions[k]! + fit.lossPrecision));
-  return Math.hypot(...counted);
+/** What is left of the whole when marks, blocks and readings have had their part: the law of decay is not known. */
+function decayShare(data: MotionData, fit: MotionFit, place: number): number {
+  const byMarks = Math.hypot(...markWeights(fit, place)) * fit.jitter;
+  const known = Math.hypot(byMarks, blockShare(fit, place), amplitudeShare(data, fit, place));
+  return Math.sqrt(Math.max(fit.covariance[place]![place]! - known ** 2, 0));
 }
 
 /** At the first mark's swing (0) or the last one's (1). */

@@ -38,6 +38,21 @@ export function cholesky(matrix: number[][]): number[][] | undefined {
   return lower;
 }
 
+/**
+ * As `cholesky`, for matrices with directions of no size at all: those get a column of zeros.
+ */
+export function semidefiniteRoot(matrix: number[][]): number[][] {
+  const lower = matrix.map((row) => row.map(() => 0));
+  for (let j = 0; j < matrix.length; j += 1) {
+    const pivot = matrix[j]![j]! - partial(lower[j]!, lower[j]!, j);
+    if (!(pivot > 1e-13 * matrix[j]![j]!)) continue;
+    for (let i = j; i < matrix.length; i += 1) {
+      lower[i]![j] = (matrix[i]![j]! - partial(lower[i]!, lower[j]!, j)) / Math.sqrt(pivot);
+    }
+  }
+  return lower;
+}
+
 function partial(a: number[], b: number[], count: number): number {
   let sum = 0;
   for (let k = 0; k < count; k += 1) sum += a[k]! * b[k]!;

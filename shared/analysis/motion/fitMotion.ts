@@ -1,6 +1,6 @@
 import { invert } from '../../statistics/invert';
-import { keepPositive } from '../../statistics/keepPositive';
 import { quantile } from '../../statistics/quantile';
+import { averageLosses } from './averageLosses';
 import type { MotionData } from './motionData';
 import { lossRates, placesOf, shapeOf, type Places } from './motionUnknowns';
 import {
@@ -21,11 +21,11 @@ export interface MotionFit {
   /** The swing the motion was released at. */
   from: number;
   values: number[];
+  /** Of the unknowns in the end, and the part of it that the data still move. */
   covariance: number[][];
-  /** How much the bounds on the losses were worth, as precisions of a reading. */
-  boundPrecisions: number[];
-  /** Precision each loss had before the data spoke. */
-  lossPrecision: number;
+  within: number[][];
+  /** How likely each of LOSS_SETS is. */
+  chances: number[];
   prediction: Prediction;
   /** ∂ of each predicted quantity after each unknown, one column an unknown. */
   slopes: Slopes;
@@ -152,8 +152,8 @@ export function fitMotion(
     from,
     values,
     covariance: state.covariance,
-    boundPrecisions: state.precisions,
-    lossPrecision: 1 / begin.lossSpread ** 2,
+    within: state.within,
+    chances: state.chances,
     prediction,
     slopes: columns,
     residuals: [...left.times],
@@ -276,7 +276,8 @@ function readingFactorOf(left: Float64Array, taken: number): number {
 interface Linear {
   mean: number[];
   covariance: number[][];
-  precisions: number[];
+  within: number[][];
+  chances: number[];
   blockWeights: number[];
   taken: { marks: number; readings: number };
 }
@@ -324,17 +325,64 @@ function linearise(at: {
     information[place]![place]! += 1 / u ** 2;
     gradient[place]! += (value - values[place]!) / u ** 2;
   };
-  for (const place of places.losses) know(place, begin.loss / 3, begin.lossSpread);
   know(places.flagError, 0, data.gate?.flagU ?? 1);
-  const covariance = invert(information);
-  if (!covariance) return undefined;
-  const mean = values.map((v, i) => v + covariance[i]!.reduce((sum, c, j) => sum + c * gradient[j]!, 0));
-  const bounded = keepPositive({ mean, covariance }, places.losses);
+  const found = splitLosses(information, gradient, values, places, begin);
+  if (!found) return undefined;
   return {
-    ...bounded,
+    ...found,
     blockWeights: [...weights.blocked],
-    taken: { marks: traceOfProduct(bounded.covariance, byMarks), readings: traceOfProduct(bounded.covariance, byReadings) },
+    taken: { marks: traceOfProduct(found.within, byMarks), readings: traceOfProduct(found.within, byReadings) },
   };
+}
+
+/**
+ * The losses by themselves, all other unknowns taken out (Schur's complement), then the others given the
+ * losses: everything but the losses is a plain least-squares problem.
+ */
+function splitLosses(
+  information: number[][],
+  gradient: number[],
+  values: number[],
+  { losses }: Places,
+  begin: MotionStart,
+) {
+  const plain = values.map((_, i) => i).filter((i) => !losses.includes(i));
+  const inverse = invert(plain.map((i) => plain.map((j) => information[i]![j]!)));
+  if (!inverse) return undefined;
+  // By how much an unknown moves when a loss does.
+  const follow = inverse.map((row) =>
+    losses.map((loss) => -row.reduce((sum, c, j) => sum + c * information[plain[j]!]![loss]!, 0)),
+  );
+  const alone = inverse.map((row) => row.reduce((sum, c, j) => sum + c * gradient[plain[j]!]!, 0));
+  const found = averageLosses(
+    {
+      values: losses.map((loss) => values[loss]!),
+      information: losses.map((a) =>
+        losses.map((b, k) => information[a]![b]! + plain.reduce((sum, i, j) => sum + information[a]![i]! * follow[j]![k]!, 0)),
+      ),
+      gradient: losses.map((loss) => gradient[loss]! - plain.reduce((sum, i, j) => sum + information[loss]![i]! * alone[j]!, 0)),
+    },
+    { sum: begin.loss, spread: begin.lossSpread },
+  );
+  if (!found) return undefined;
+  const mean = [...values];
+  losses.forEach((loss, k) => (mean[loss] = found.mean[k]!));
+  plain.forEach((i, j) => {
+    mean[i] = values[i]! + alone[j]! + losses.reduce((sum, loss, k) => sum + follow[j]![k]! * (found.mean[k]! - values[loss]!), 0);
+  });
+  const spread = (ofLosses: number[][]) => {
+    const c = values.map(() => values.map(() => 0));
+    losses.forEach((a, k) => losses.forEach((b, l) => (c[a]![b] = ofLosses[k]![l]!)));
+    plain.forEach((i, j) => {
+      const withLosses = losses.map((_, l) => follow[j]!.reduce((sum, f, k) => sum + f * ofLosses[k]![l]!, 0));
+      losses.forEach((b, l) => (c[i]![b] = c[b]![i] = withLosses[l]!));
+      plain.forEach((m, n) => {
+        c[i]![m] = inverse[j]![n]! + withLosses.reduce((sum, v, l) => sum + v * follow[n]![l]!, 0);
+      });
+    });
+    return c;
+  };
+  return { mean, covariance: spread(found.covariance), within: spread(found.within), chances: found.chances };
 }
 
 /** Steps towards the mean as far as the motion can be followed. */
