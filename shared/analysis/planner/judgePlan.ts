@@ -1,5 +1,6 @@
 import type { BudgetLine } from '../../schemas/analysis';
 import { MAX_SWINGS } from '../../schemas/limits';
+import { forecast } from '../forecast';
 import { dominantTerm, predictPlan, type Prediction } from './predictPlan';
 import type { TimingPlan } from './timingPlan';
 
@@ -15,14 +16,17 @@ export interface AmplitudeEffect {
 }
 
 export type TargetVerdict = {
-  /** meets: as planned · more_swings, more_repeats: with that many · floor: `term` alone keeps it from it · no_result: the plan gives no period */
-  code: 'meets' | 'more_swings' | 'more_repeats' | 'floor' | 'no_result';
+  /**
+   * meets: as planned · swings, repeats: with as many as needed · floor: neither gets there ·
+   * no_result: the plan gives no period, or no g for want of a length
+   */
+  code: 'meets' | 'swings' | 'repeats' | 'floor' | 'no_result';
   /** Relative standard uncertainty the plan reaches; null with no_result. */
   reached: number | null;
   /** Least swings that reach the target with these repeats, and least repeats with these swings; null when none do. */
   swingsNeeded: number | null;
   repeatsNeeded: number | null;
-  /** What brings most of the uncertainty. */
+  /** What brings most of the uncertainty; with floor, of what is left after many repeats. */
   term: BudgetLine['term'] | null;
 };
 
@@ -46,7 +50,7 @@ const MOST_REPEATS = 100;
 /**
  * Whether a plan reaches a precision, and what would.
  *
- * @example judgeTarget(plan, { of: 'smallPeriod', relative: 1e-3 }) // { code: 'more_swings', swingsNeeded: 24, … }
+ * @example judgeTarget(plan, { of: 'smallPeriod', relative: 1e-3 }) // { code: 'swings', swingsNeeded: 24, … }
  */
 export function judgeTarget(plan: TimingPlan, target: Target): TargetVerdict {
   const relativeU = (prediction: Prediction | undefined) => {
@@ -60,16 +64,12 @@ export function judgeTarget(plan: TimingPlan, target: Target): TargetVerdict {
   }
   const reaches = (changed: Partial<TimingPlan>) => relativeU(predictPlan({ ...plan, ...changed })) <= target.relative;
   const swingsNeeded = leastSwings(plan, (swings) => reaches({ swings }));
-  const repeatsNeeded = least(1, MOST_REPEATS, 1, (repeats) => reaches({ repeats }));
+  const repeatsNeeded = least(MOST_REPEATS, 1, (repeats) => reaches({ repeats }));
   const met = reached <= target.relative;
-  const code = met
-    ? 'meets'
-    : swingsNeeded !== null
-      ? 'more_swings'
-      : repeatsNeeded !== null
-        ? 'more_repeats'
-        : 'floor';
-  const budget = target.of === 'gravity' ? prediction.gravityBudget : prediction.budget;
+  const code = met ? 'meets' : swingsNeeded !== null ? 'swings' : repeatsNeeded !== null ? 'repeats' : 'floor';
+  // What stands in the way is what is left when repeating has averaged all it can.
+  const rest = code === 'floor' ? predictPlan({ ...plan, repeats: MOST_REPEATS })! : prediction;
+  const budget = target.of === 'gravity' ? rest.gravityBudget : rest.budget;
   return { code, reached, swingsNeeded, repeatsNeeded, term: dominantTerm(budget) };
 }
 
@@ -95,15 +95,18 @@ export function judgeAmplitudeEffect(plan: TimingPlan, { otherAmplitude }: Ampli
   return { code, ...found, swingsNeeded };
 }
 
-/** Whole swings, in steps of the marks. */
-function leastSwings({ swingsPerMark, way }: TimingPlan, holds: (swings: number) => boolean): number | null {
-  return least(1, MAX_SWINGS, way === 'line' ? Math.max(swingsPerMark, 1) : 1, holds);
+/** Whole swings in steps of the marks, as long as it swings. */
+function leastSwings(plan: TimingPlan, holds: (swings: number) => boolean): number | null {
+  const step = plan.way === 'line' ? Math.max(plan.swingsPerMark, 1) : 1;
+  const { swings } = forecast({ ...plan, amplitude: plan.amplitude.value, swings: MAX_SWINGS });
+  return least(Math.floor(swings), step, holds);
 }
 
-/** Least of from, 2·step, 3·step … that holds, when all above it up to a point hold too: doubles, then halves. */
-function least(from: number, most: number, step: number, holds: (n: number) => boolean): number | null {
+/** Least multiple of `step` up to `most` that holds, found by doubling, then halving. */
+function least(most: number, step: number, holds: (n: number) => boolean): number | null {
   const top = Math.floor(most / step);
-  let [low, high] = [Math.ceil(from / step) - 1, Math.ceil(from / step)];
+  if (top < 1) return null;
+  let [low, high] = [0, 1];
   while (!holds(high * step)) {
     if (high >= top) return null;
     [low, high] = [high, Math.min(high * 2, top)];

@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { exportRuns, readRunFile, RunFile, RunFileError } from '@shared/schemas/runFile';
+import type { RawRun } from '@shared/schemas/run';
 import { lineOfBreak, lineOfValue } from '@shared/schemas/locateJson';
 import { anyRun } from '../../factories/anyRun';
 import { rawEdits, rawKeyedRun, rawTapRun, sealed, uuid } from '../../factories/rawRuns';
@@ -83,7 +84,8 @@ describe('what cannot be taken is refused with line and field', () => {
   });
 
   test('a missing field: the line of what it is missing from', () => {
-    const { made: _, ...rest } = rawTapRun();
+    const rest: Partial<RawRun> = rawTapRun();
+    delete rest.made;
     const plain = JSON.stringify(rest, null, 1);
     expect(refusal(plain)).toMatchObject({ field: 'made', line: 1, message: 'is missing' });
   });

@@ -187,7 +187,7 @@ describe('judgeTarget', () => {
   test('offers repeats too', () => {
     const verdict = judgeTarget(plan({ swings: 10 }), { of: 'smallPeriod', relative: 2e-3 });
     // 0.0953 × 0.07 / 2 = 3.34e-3 for one run, so three.
-    expect(verdict).toMatchObject({ code: 'more_swings', repeatsNeeded: 3 });
+    expect(verdict).toMatchObject({ code: 'swings', repeatsNeeded: 3 });
   });
 
   test('has no result where the bob is at rest before the end', () => {
@@ -196,6 +196,25 @@ describe('judgeTarget', () => {
       relative: 1e-3,
     });
     expect(verdict).toMatchObject({ code: 'no_result', reached: null });
+  });
+
+  test('without a reading at the end the decay limits how long is good, and fewer swings may do', () => {
+    const given = { readsEnd: false, amplitude: { value: radians(20), u: radians(0.2) }, swings: 100 };
+    const verdict = judgeTarget(usual(given), { of: 'smallPeriod', relative: 3e-3 });
+    expect(verdict).toMatchObject({ code: 'swings', term: 'decay' });
+    expect(verdict.swingsNeeded).toBeLessThan(20);
+  });
+
+  test('does not ask for more swings than there are before it is at rest', () => {
+    const dying = usual({
+      damping: viscousGuess(0.5, 10),
+      swings: 10,
+      jitter: 0.01,
+      amplitude: { value: radians(3), u: 0 },
+    });
+    const { swingsNeeded } = judgeTarget(dying, { of: 'smallPeriod', relative: 4e-4 });
+    expect(swingsNeeded).toBeGreaterThan(10);
+    expect(predictPlan({ ...dying, swings: swingsNeeded! })).toBeDefined();
   });
 
   test('every k-th swing: swings come in steps of k', () => {
