@@ -5,7 +5,7 @@ import { slopeUncertainty } from '../statistics/slopeUncertainty';
 import type { RunView } from '../timing/runView';
 import { lineMethod } from './lineMethod';
 import type { Fit, Method } from './method';
-import { fitMotion, type MotionFit } from './motion/fitMotion';
+import { fitMotion, LARGE_AMPLITUDE, LARGE_LOSS, type MotionFit } from './motion/fitMotion';
 import { motionData, type MotionData } from './motion/motionData';
 import type { MotionEvent } from './motion/predictMotion';
 import { startMotion } from './motion/startMotion';
@@ -48,22 +48,31 @@ export function findMotion(view: RunView, path: MotionFit['path'] = 'integrated'
   const leastJitter = Math.max(view.readingStep / Math.sqrt(12), 1e-7);
   const usualJitter = data.gate ? Math.max(GATE_U, leastJitter) : HAND_U;
   const events: MotionEvent[] = data.gate ? ['pass'] : ['pass', 'turn'];
-  const common = { usualJitter, leastJitter };
-  const probes = [0, last];
-  const fits = events.flatMap((event) => {
-    const fit = fitMotion(data, begin, from, probes, { ...common, event, path: 'averaged' });
-    return fit ? [fit] : [];
-  });
-  const [best, other] = fits.sort((a, b) => a.unlikeliness - b.unlikeliness);
-  if (!best) return undefined;
-  const isLong = last - from > MOST_INTEGRATED;
-  const full =
-    path === 'integrated' && !isLong
-      ? fitMotion(data, begin, from, probes, { ...common, event: best.event, path, near: best })
-      : best;
-  const fit = full ?? best;
-  if (!(fit.values[fit.places.period]! > 0)) return undefined;
-  return { data, fit, decayKnown: begin.decayKnown, doubt: other ? doubtOfEvent(best, other) : { shift: 0, u: 0 } };
+  const fitAs = (event: MotionEvent, by: MotionFit['path'], near?: MotionFit) =>
+    fitMotion(data, begin, from, [0, last], { event, path: by, usualJitter, leastJitter, near });
+  let fits: MotionFit[] = [];
+  for (const event of events) {
+    const fit = fitAs(event, 'averaged', fits[0]);
+    if (fit) fits.push(fit);
+  }
+  if (path === 'integrated' && last - from <= MOST_INTEGRATED) {
+    // Where the averaged law is a poor judge of which event was marked, both are integrated.
+    const isExtreme = fits.some(
+      ({ values, places }) =>
+        values[places.amplitude]! > LARGE_AMPLITUDE ||
+        places.losses.reduce((sum, place) => sum + values[place]!, 0) > LARGE_LOSS,
+    );
+    fits.sort(byLikeliness);
+    fits = fits.map((fit, i) => (i === 0 || isExtreme ? (fitAs(fit.event, path, fit) ?? fit) : fit));
+    if (isExtreme) fits.sort(byLikeliness);
+  } else fits.sort(byLikeliness);
+  const [fit, other] = fits;
+  if (!fit || !(fit.values[fit.places.period]! > 0)) return undefined;
+  return { data, fit, decayKnown: begin.decayKnown, doubt: other ? doubtOfEvent(fit, other) : { shift: 0, u: 0 } };
+}
+
+function byLikeliness(a: MotionFit, b: MotionFit): number {
+  return a.unlikeliness - b.unlikeliness;
 }
 
 function doubtOfEvent(best: MotionFit, other: MotionFit) {

@@ -1,4 +1,4 @@
-import { invert } from '../../statistics/invert';
+import { cholesky, invert } from '../../statistics/invert';
 import { keepPositive } from '../../statistics/keepPositive';
 
 /** What the data say about the three losses, as −½ dᵀ information d + gradient · d with d the change of `values`. */
@@ -68,23 +68,15 @@ function withSet(set: readonly number[], { values, information, gradient }: Loss
     return gradient[i]! + moved + (part - values[i]!) * precision;
   });
   const covariance = invert(inner);
-  if (!covariance) return undefined;
+  const root = cholesky(inner);
+  if (!covariance || !root) return undefined;
   const step = covariance.map((row) => row.reduce((sum, c, j) => sum + c * pull[j]!, 0));
   const bounded = keepPositive({ mean: step.map((d, i) => values[set[i]!]! + d), covariance });
   const off = set.reduce((sum, i) => sum + (part - values[i]!) ** 2, 0) * precision;
   logEvidence += step.reduce((sum, d, i) => sum + d * pull[i]!, 0) / 2 - off / 2;
-  logEvidence += Math.log(determinant(covariance)) / 2 - set.length * Math.log(prior.spread) + bounded.logShare;
+  logEvidence += bounded.logShare - set.length * Math.log(prior.spread);
+  root.forEach((row, i) => (logEvidence -= Math.log(row[i]!)));
   const all = (of: (i: number) => number) => [0, 1, 2].map((k) => (set.includes(k) ? of(set.indexOf(k)) : 0));
+  if (!Number.isFinite(logEvidence)) return undefined;
   return { logEvidence, mean: all((i) => bounded.mean[i]!), covariance: [0, 1, 2].map((k) => all((j) => (set.includes(k) ? bounded.covariance[set.indexOf(k)]![j]! : 0))) };
-}
-
-function determinant(m: number[][]): number {
-  const [a, b, c] = m;
-  if (!b) return a![0]!;
-  if (!c) return a![0]! * b[1]! - a![1]! * b[0]!;
-  return (
-    a![0]! * (b[1]! * c[2]! - b[2]! * c[1]!) -
-    a![1]! * (b[0]! * c[2]! - b[2]! * c[0]!) +
-    a![2]! * (b[0]! * c[1]! - b[1]! * c[0]!)
-  );
 }

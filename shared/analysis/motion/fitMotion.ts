@@ -65,11 +65,11 @@ export interface FitOptions {
 const TWO_PI = 2 * Math.PI;
 const MOST_STEPS = 25;
 /** A step this small, in standard uncertainties, is the last. */
-const SETTLED = 2e-4;
+const SETTLED = 1e-3;
 const LARGEST = (179.5 / 180) * Math.PI;
 /** Where averaged slopes are no good guide any more: rad, and share lost in a swing. */
-const LARGE_AMPLITUDE = 1.3;
-const LARGE_LOSS = 0.04;
+export const LARGE_AMPLITUDE = 1.3;
+export const LARGE_LOSS = 0.04;
 /** With fewer marks left over, they do not tell their jitter. */
 const FEWEST_FREE = 1.5;
 /** Blocks further off than this many standard deviations count less. */
@@ -107,9 +107,10 @@ export function fitMotion(
   const averaged = predictWith(predictAveraged);
   const predict = isIntegrated ? predictWith(predictIntegrated) : averaged;
 
-  let values = options.near ? [...options.near.values] : firstValues(places, begin);
-  let prediction = predict(values);
-  if (!prediction) return undefined;
+  const setOut = (mixture: readonly number[]) => firstValues(places, begin, mixture);
+  let values = options.near ? [...options.near.values] : bestOf(MIXTURES.map(setOut), averaged, data);
+  let prediction = values && predict(values);
+  if (!values || !prediction) return undefined;
   let jitter = options.near?.jitter ?? Math.max(begin.jitter, options.leastJitter);
   let blockJitter = options.near?.blockJitter ?? 0;
   let readingFactor = options.near?.readingFactor ?? 1;
@@ -170,15 +171,40 @@ export function fitMotion(
   return values.every(Number.isFinite) && state.covariance.every((row) => row.every(Number.isFinite)) ? fit : undefined;
 }
 
-function firstValues(places: Places, begin: MotionStart): number[] {
+/** Parts of the loss to set out with: viscous, quadratic, dry. */
+const MIXTURES = [
+  [1 / 3, 1 / 3, 1 / 3],
+  [0, 1, 0],
+  [1, 0, 0],
+  [0, 0, 1],
+] as const;
+
+function firstValues(places: Places, begin: MotionStart, mixture: readonly number[]): number[] {
   const values = new Array<number>(places.count).fill(0);
   values[places.start] = begin.start;
   values[places.period] = begin.period;
   if (places.limp >= 0) values[places.limp] = begin.limp;
   values[places.amplitude] = begin.amplitude;
-  for (const place of places.losses) values[place] = begin.loss / 3;
+  places.losses.forEach((place, k) => (values[place] = begin.loss * mixture[k]!));
   if (places.gateAngle >= 0) values[places.gateAngle] = begin.gateAngle;
   return values;
+}
+
+/** The one whose amplitudes come nearest to the readings. */
+function bestOf(
+  starts: number[][],
+  predict: (values: number[]) => Prediction | undefined,
+  { readings }: MotionData,
+): number[] | undefined {
+  let best: number[] | undefined;
+  let least = Infinity;
+  for (const start of starts) {
+    const found = predict(start);
+    const off = found && readings.reduce((sum, { amplitude, u }, i) => sum + ((amplitude - found.amplitudes[i]!) / u) ** 2, 0);
+    if (off === undefined || off >= least) continue;
+    [best, least] = [start, off];
+  }
+  return best;
 }
 
 interface LeftOver {

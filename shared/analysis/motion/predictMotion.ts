@@ -83,7 +83,8 @@ export function predictIntegrated(shape: Shape, asked: Questions): Prediction | 
   const last = asked.swings.at(-1)! - asked.from;
   const lastReading = Math.max(0, ...asked.amplitudesAt) - asked.from;
   const needed = Math.ceil(2 * last) + (asked.event === 'pass' ? 1 : 0);
-  const motion = releaseMotion(shape.amplitude, shape.damping, Math.max(needed, Math.ceil(2 * lastReading)));
+  const halfSwings = Math.max(needed, Math.ceil(2 * lastReading));
+  const motion = releaseMotion(shape.amplitude, shape.damping, halfSwings, TOLERANCE);
   if (motion.halfSwings.length < needed) return undefined;
   const answer = blank(asked);
   for (let i = 0; i < asked.swings.length; i += 1) {
@@ -106,6 +107,9 @@ export function predictIntegrated(shape: Shape, asked: Questions): Prediction | 
   asked.amplitudesAt.forEach((swing, i) => (answer.amplitudes[i] = amplitudeBetween(motion.turns, swing - asked.from)));
   return answer;
 }
+
+/** Passes right to 1e-9 of a period or better, far below what marks show. */
+const TOLERANCE = 1e-12;
 
 /** True when every mark is at a turning point or the pass after one, which is where integration answers. */
 export function isIntegrable({ swings, from }: Questions): boolean {

@@ -16,8 +16,11 @@ export interface AveragedMotion {
 const LEAST_AMPLITUDE = 1e-7;
 const LARGEST_AMPLITUDE = (179.9 / 180) * Math.PI;
 const MOST_ROWS = 600;
-/** A row a swing, and more where a good part of the amplitude goes in one. */
-const LOSS_PER_ROW = 20;
+const FEWEST_ROWS = 8;
+/** Rows are as far apart as the first of them loses this share of the amplitude, within limits. */
+const LOSS_PER_ROW = 0.03;
+const FEWEST_PER_SWING = 0.2;
+const MOST_PER_SWING = 16;
 
 /**
  * How a pendulum's amplitude falls and its time grows, averaged over each swing: the energy every term
@@ -34,7 +37,8 @@ const LOSS_PER_ROW = 20;
  */
 export function averagedMotion(amplitude: number, damping: Damping, swings: number): AveragedMotion {
   const lossAtFirst = -slopes(amplitude, damping)[0] / amplitude;
-  const rows = Math.min(Math.max(Math.ceil(swings * Math.min(1 + LOSS_PER_ROW * lossAtFirst, 8)), 4), MOST_ROWS);
+  const perSwing = Math.min(Math.max(lossAtFirst / LOSS_PER_ROW, FEWEST_PER_SWING), MOST_PER_SWING);
+  const rows = Math.min(Math.max(Math.ceil(swings * perSwing), FEWEST_ROWS), MOST_ROWS);
   const step = swings / rows;
   const table: AveragedMotion = {
     step,

@@ -19,8 +19,8 @@ export interface HalfSwing {
 }
 
 const ORDER = 20;
-/** What a step may leave out, as a share of the amplitude. */
-const TOLERANCE = 3e-15;
+/** What a step may leave out, as a share of the amplitude, when passes are to be right to 1e-9 at 150°. */
+export const FINE = 3e-15;
 /** A half swing from 179.9° takes some thirty steps. */
 const MOST_STEPS = 400;
 
@@ -30,11 +30,12 @@ const MOST_STEPS = 400;
  * every step's polynomial is also the dense output.
  *
  * @param amplitude  rad, in (0, π), on the side counted as positive
+ * @param tolerance  what a step may leave out, as a share of the amplitude
  * @returns          undefined when it does not set off (|sin θ| ≤ dry) or does not come to rest within
  *                   the steps (damped so strongly that it creeps)
  * @see Jorba & Zou, Exp. Math. 14, 99 (2005), for order and step (from memory)
  */
-export function halfSwing(amplitude: number, damping: Damping): HalfSwing | undefined {
+export function halfSwing(amplitude: number, damping: Damping, tolerance = FINE): HalfSwing | undefined {
   if (!(amplitude > 0 && amplitude < Math.PI) || sineCosine(amplitude)[0] <= damping.dry) return undefined;
   const pieces: Piece[] = [];
   let start = 0;
@@ -42,7 +43,7 @@ export function halfSwing(amplitude: number, damping: Damping): HalfSwing | unde
   let rate = 0;
   for (let step = 0; step < MOST_STEPS; step += 1) {
     const angle = series(at, rate, damping);
-    const length = stepLength(angle, amplitude);
+    const length = stepLength(angle, tolerance * amplitude);
     const endRate = slopeAt(angle, length);
     if (endRate >= 0) {
       const rest = rootOfSlope(angle, length);
@@ -129,8 +130,7 @@ const SCALED = new Float64Array(ORDER + 1);
  * As long as the last coefficients say that the rest of the series stays below the tolerance. Four of
  * them, because at rest and near 90° three out of four vanish.
  */
-function stepLength(angle: Float64Array, amplitude: number): number {
-  const allowed = TOLERANCE * amplitude;
+function stepLength(angle: Float64Array, allowed: number): number {
   const by = (k: number) => root(allowed / Math.max(Math.abs(angle[k]!), 1e-300), k);
   return Math.min(by(ORDER - 3), by(ORDER - 2), by(ORDER - 1), by(ORDER), LONGEST_STEP);
 }

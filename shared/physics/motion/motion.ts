@@ -1,5 +1,5 @@
 import type { Damping } from './damping';
-import { halfSwing, passAt, slopeAt, valueAt, type HalfSwing } from './halfSwing';
+import { FINE, halfSwing, passAt, slopeAt, valueAt, type HalfSwing } from './halfSwing';
 
 /** A turning point: when, and how far from the lowest point, on the side it was released from when `turn` is even. */
 export interface Turn {
@@ -22,15 +22,16 @@ export interface Motion {
  *
  * @param amplitude   rad, in (0, π); passes right to 1e-9 below 150° and to 1e-7 at 170°
  * @param halfSwings  how many to follow at most
+ * @param tolerance   of a step; a larger one is faster
  * @example releaseMotion(Math.PI / 3, { viscous: 0, quadratic: 0, dry: 0 }, 2).turns[2].time // 6.7430014192
  * @see reference runs in tests/reference/damped.json
  */
-export function releaseMotion(amplitude: number, damping: Damping, halfSwings: number): Motion {
+export function releaseMotion(amplitude: number, damping: Damping, halfSwings: number, tolerance = FINE): Motion {
   const turns: Turn[] = [{ time: 0, amplitude }];
   const done: HalfSwing[] = [];
   while (done.length < halfSwings) {
     const { time, amplitude: from } = turns.at(-1)!;
-    const next = halfSwing(from, damping);
+    const next = halfSwing(from, damping, tolerance);
     if (!next) break;
     done.push(next);
     turns.push({ time: time + next.duration, amplitude: next.reached });
