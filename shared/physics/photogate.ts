@@ -108,26 +108,3 @@ export function edgeBias(flag: number, amplitude: number, lossPerSwing: number, 
   mustBeAboveZero('edgeBias', { flag, amplitude, smallPeriod });
   return -((flag / 2) * Math.abs(lossPerSwing) * smallPeriod) / (2 * Math.PI * amplitude ** 2);
 }
-
-/** Pieces of a block lie closer than this share of the usual distance between blocks. Common practice, no source. */
-const SAME_BLOCK = 0.1;
-
-/**
- * Puts together what chatter tore apart: blocks that follow one another in far less than a half swing are
- * one, from the first edge to the last.
- *
- * @param blocks      in order, none overlapping
- * @param halfSwing   s, > 0, roughly: the usual time from one block to the next
- * @returns           blocks, and for each how many pieces it was made of
- */
-export function mergeChatter(blocks: readonly Block[], halfSwing: number): { block: Block; pieces: number }[] {
-  mustBeAboveZero('mergeChatter', { halfSwing });
-  const merged: { block: Block; pieces: number }[] = [];
-  for (const block of blocks) {
-    const before = merged.at(-1);
-    if (before && block[0] - before.block[1] < SAME_BLOCK * halfSwing) {
-      merged[merged.length - 1] = { block: [before.block[0], block[1]], pieces: before.pieces + 1 };
-    } else merged.push({ block, pieces: 1 });
-  }
-  return merged;
-}

@@ -14,12 +14,9 @@ const DEEPEST = 200;
  */
 export function lineOfValue(text: string, path: JsonPath): number {
   let reached = 0;
-  let depth = 0;
+  // Values are met from the outside in, so the last on the way is the deepest.
   scan(text, (at, found) => {
-    if (found.length > depth && found.length <= path.length && found.every((step, i) => step === path[i])) {
-      depth = found.length;
-      reached = at;
-    }
+    if (found.length <= path.length && found.every((step, i) => step === path[i])) reached = at;
   });
   return lineAt(text, reached);
 }

@@ -105,22 +105,6 @@ describe('edges and midpoints of a swing that dies away', () => {
   });
 });
 
-describe('mergeChatter', () => {
-  test('puts together a block that was torn in three and keeps the others', () => {
-    const blocks: gate.Block[] = [[0, 0.02], [1, 1.004], [1.006, 1.007], [1.009, 1.02], [2, 2.02]]; // prettier-ignore
-    expect(gate.mergeChatter(blocks, 1)).toEqual([
-      { block: [0, 0.02], pieces: 1 },
-      { block: [1, 1.02], pieces: 3 },
-      { block: [2, 2.02], pieces: 1 },
-    ]);
-  });
-
-  test('leaves blocks apart that are half a swing apart, also beside an off-centre beam', () => {
-    const blocks: gate.Block[] = [[0, 0.1], [0.4, 0.5], [2, 2.1], [2.4, 2.5]]; // prettier-ignore
-    expect(gate.mergeChatter(blocks, 1)).toHaveLength(4);
-  });
-});
-
 describe('timeFromBottom', () => {
   test('is a quarter of the period at the turning point', () => {
     for (const deg of [1, 30, 90, 150, 175]) {

@@ -86,6 +86,17 @@ describe('taps that err together', () => {
     expect(Math.abs(ends / line - gain)).toBeLessThan(0.08);
   });
 
+  test('passes of the two directions cost a degree of freedom, and correlation costs more', () => {
+    const spare = (parts: Partial<TimingPlan>) =>
+      timingUncertainty(
+        plan(parts),
+        Array.from({ length: 21 }, (_, i) => i / 2),
+      )!.spare;
+    expect(spare({ swingsPerMark: 0.5 })).toBe(18);
+    expect(spare({ swingsPerMark: 1 })).toBe(19);
+    expect(spare({ swingsPerMark: 1, lag1: 0.4 })).toBeCloseTo((19 * 0.6) / 1.4, 12);
+  });
+
   test('every pass brings less than √2 when neighbours err together', () => {
     const gain = (lag1: number) =>
       predictPlan(usual({ lag1 }))!.timingU / predictPlan(usual({ lag1, swingsPerMark: 0.5 }))!.timingU;
@@ -144,6 +155,12 @@ describe('budget of a usual plan', () => {
     expect(u(false)).toBeGreaterThan(5 * u(true));
   });
 
+  test('g carries twice the relative uncertainty of T0, and that of the length', () => {
+    const { smallPeriod, gravity } = predictPlan(usual())!;
+    const relative = Math.hypot((2 * smallPeriod.u) / smallPeriod.value, 0.001 / 0.994);
+    expect(gravity!.u / gravity!.value).toBeCloseTo(relative, 12);
+  });
+
   test('1 mm of 25 cm is 0.4 % of g', () => {
     const { gravity, gravityBudget } = predictPlan(usual({ smallPeriod: 1.003, length: { value: 0.25, u: 0.001 } }))!;
     expect(gravityBudget.find(({ term }) => term === 'length')!.u / gravity!.value).toBeCloseTo(0.004, 12);
@@ -176,6 +193,12 @@ describe('judgeTarget', () => {
       relative: 1e-3,
     });
     expect(verdict).toMatchObject({ code: 'floor', swingsNeeded: null, repeatsNeeded: null, term: 'length' });
+  });
+
+  test('what stands in the way is what repeats leave, not what one run shows', () => {
+    const few = usual({ swings: 10 });
+    expect(dominantTerm(predictPlan(few)!.gravityBudget)).toBe('timing');
+    expect(judgeTarget(few, { of: 'gravity', relative: 5e-4 })).toMatchObject({ code: 'floor', term: 'length' });
   });
 
   test('says when the plan is good enough, and how few swings would do', () => {
