@@ -1,10 +1,22 @@
 import type { AmplitudePoint } from '../physics/amplitudeCurve';
 import { averagedAt, averagedMotion, slopes } from '../physics/motion/averagedMotion';
+import type { Damping } from '../physics/motion/damping';
 import type { Measured } from '../schemas/common';
 import { leastSquares } from '../statistics/leastSquares';
 
 export const LAWS = ['viscous', 'quadratic', 'dry'] as const;
 export type DampingLaw = (typeof LAWS)[number];
+
+/** What a motion fit says of the damping: the part of `Motion` in the analysis that is about it. */
+export interface DampingFound {
+  gamma_per_s: Measured;
+  beta: Measured;
+  c: Measured;
+  /** How likely each term is to act, in [0, 1]. */
+  chances: Record<DampingLaw, number>;
+  /** The one that acts alone, if that is more likely than not. */
+  law: DampingLaw | 'mixed' | 'not_known';
+}
 
 export interface LawShare {
   law: DampingLaw;
@@ -12,42 +24,41 @@ export interface LawShare {
   lossPerSwing: number;
   /** Of all that is lost. */
   share: number;
-  /** How many standard uncertainties the term lies above 0. */
-  sigma: number;
+  chance: number;
 }
 
 export interface LawVerdict {
   /** null when the data do not tell. */
   law: DampingLaw | null;
-  /**
-   * only_one: the others do not show above their uncertainty · largest: several show, this one takes most ·
-   * none_shows: no term stands out of its uncertainty
-   */
-  why: 'only_one' | 'largest' | 'none_shows';
+  /** alone: one term acts · largest: several do, and this one takes most at this amplitude · not_known: the run does not tell */
+  why: 'alone' | 'largest' | 'not_known';
   /** Largest loss first. */
   shares: LawShare[];
 }
 
-/** Standard uncertainties a term must lie above 0 to count as seen. Common practice. */
-const SHOWS = 2;
+/** Damping as pure numbers, as the equation of motion takes it. @param smallPeriod  T0, s */
+export function dampingFrom({ gamma_per_s, beta, c }: DampingFound, smallPeriod: number): Damping {
+  return { viscous: (gamma_per_s.value * smallPeriod) / (2 * Math.PI), quadratic: beta.value, dry: c.value };
+}
 
 /**
- * Which law of damping a motion fit speaks for, at an amplitude: what each fitted term takes a swing there.
+ * The law of decay a motion fit speaks for, at an amplitude, and what each term takes a swing there.
  *
- * @param terms      as the motion fit gives them, pure numbers with their standard uncertainties
- * @param amplitude  rad, in (0, π)
+ * @param found        by the motion fit
+ * @param smallPeriod  T0, s, > 0
+ * @param amplitude    rad, in (0, π)
  */
-export function preferredLaw(terms: Record<DampingLaw, Measured>, amplitude: number): LawVerdict {
-  const losses = LAWS.map((law) => lossOf(law, terms[law].value, amplitude));
+export function preferredLaw(found: DampingFound, smallPeriod: number, amplitude: number): LawVerdict {
+  const damping = dampingFrom(found, smallPeriod);
+  const losses = LAWS.map((law) => lossOf(law, damping[law], amplitude));
   const total = losses.reduce((sum, loss) => sum + loss, 0);
   const shares = LAWS.map((law, i): LawShare => {
-    const { value, u } = terms[law];
-    const sigma = value === 0 ? 0 : value / u;
-    return { law, lossPerSwing: losses[i]!, share: total === 0 ? 0 : losses[i]! / total, sigma };
+    const share = total === 0 ? 0 : losses[i]! / total;
+    return { law, lossPerSwing: losses[i]!, share, chance: found.chances[law] };
   }).sort((a, b) => b.lossPerSwing - a.lossPerSwing);
-  const seen = shares.filter((share) => share.sigma >= SHOWS);
-  if (seen.length === 0) return { law: null, why: 'none_shows', shares };
-  return { law: seen[0]!.law, why: seen.length === 1 ? 'only_one' : 'largest', shares };
+  if (found.law === 'not_known') return { law: null, why: 'not_known', shares };
+  if (found.law !== 'mixed') return { law: found.law, why: 'alone', shares };
+  return { law: shares[0]!.law, why: 'largest', shares };
 }
 
 export interface LawFit {

@@ -1,7 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import { decayConstants, decrementFrom } from '@shared/analysis/decayConstants';
 import { forecast, viscousGuess } from '@shared/analysis/forecast';
-import { lawFromReadings, preferredLaw } from '@shared/analysis/preferredLaw';
+import { lawFromReadings, preferredLaw, type DampingFound } from '@shared/analysis/preferredLaw';
 import { periodRatio } from '@shared/physics/periodRatio';
 import { radians } from '@shared/units/angle';
 import damped from '../../reference/damped.json';
@@ -41,24 +41,38 @@ test('decrementFrom: 20° to 10° in 20 swings is ln 2/20, and Q = π/δ', () =>
 });
 
 describe('preferredLaw', () => {
-  const nothing = { value: 0, u: 0.001 };
-  test('is the only one that shows', () => {
-    const verdict = preferredLaw({ viscous: { value: 0.005, u: 0.0005 }, quadratic: nothing, dry: nothing }, 0.3);
-    expect(verdict).toMatchObject({ law: 'viscous', why: 'only_one' });
-    expect(verdict.shares[0]).toMatchObject({ law: 'viscous', share: 1, sigma: 10 });
+  const at = (value: number) => ({ value, u: value / 10 });
+  const found = (parts: Partial<DampingFound> = {}): DampingFound => ({
+    gamma_per_s: at(0),
+    beta: at(0.02),
+    c: at(0.002),
+    chances: { viscous: 0.1, quadratic: 0.9, dry: 0.9 },
+    law: 'mixed',
+    ...parts,
   });
 
-  test('depends on the amplitude where two show: drag is large when the swing is', () => {
-    const terms = { viscous: nothing, quadratic: { value: 0.02, u: 0.001 }, dry: { value: 0.002, u: 0.0001 } };
-    expect(preferredLaw(terms, radians(60))).toMatchObject({ law: 'quadratic', why: 'largest' });
-    expect(preferredLaw(terms, radians(5))).toMatchObject({ law: 'dry', why: 'largest' });
+  test('is the one that acts alone', () => {
+    const terms = {
+      gamma_per_s: at(0.01),
+      beta: at(0),
+      c: at(0),
+      law: 'viscous',
+      chances: { viscous: 1, quadratic: 0.1, dry: 0.1 },
+    } as const;
+    const verdict = preferredLaw(terms, 2, 0.1);
+    expect(verdict).toMatchObject({ law: 'viscous', why: 'alone' });
+    // A = A₀ e^(−γt): a swing of 2 s takes 2 % of 0.1 rad.
+    expect(verdict.shares[0]).toMatchObject({ law: 'viscous', share: 1, chance: 1 });
+    expect(verdict.shares[0]!.lossPerSwing).toBeCloseTo(0.002, 5);
   });
 
-  test('is none where no term stands out of its uncertainty', () => {
-    expect(preferredLaw({ viscous: { value: 1e-3, u: 1e-3 }, quadratic: nothing, dry: nothing }, 0.3)).toMatchObject({
-      law: null,
-      why: 'none_shows',
-    });
+  test('of several is the one that takes most there: drag when the swing is large, dry friction when it is small', () => {
+    expect(preferredLaw(found(), 2, radians(60))).toMatchObject({ law: 'quadratic', why: 'largest' });
+    expect(preferredLaw(found(), 2, radians(5))).toMatchObject({ law: 'dry', why: 'largest' });
+  });
+
+  test('is none where the run does not tell', () => {
+    expect(preferredLaw(found({ law: 'not_known' }), 2, 0.3)).toMatchObject({ law: null, why: 'not_known' });
   });
 });
 
