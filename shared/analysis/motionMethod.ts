@@ -5,7 +5,8 @@ import { slopeUncertainty } from '../statistics/slopeUncertainty';
 import type { RunView } from '../timing/runView';
 import { lineMethod } from './lineMethod';
 import type { Fit, Method } from './method';
-import { fitMotion, LARGE_AMPLITUDE, LARGE_LOSS, type MotionFit } from './motion/fitMotion';
+import { LOSS_SETS } from './motion/averageLosses';
+import { fitMotion, losesMuch, type MotionFit } from './motion/fitMotion';
 import { motionData, type MotionData } from './motion/motionData';
 import type { MotionEvent } from './motion/predictMotion';
 import { startMotion } from './motion/startMotion';
@@ -57,11 +58,7 @@ export function findMotion(view: RunView, path: MotionFit['path'] = 'integrated'
   }
   if (path === 'integrated' && last - from <= MOST_INTEGRATED) {
     // Where the averaged law is a poor judge of which event was marked, both are integrated.
-    const isExtreme = fits.some(
-      ({ values, places }) =>
-        values[places.amplitude]! > LARGE_AMPLITUDE ||
-        places.losses.reduce((sum, place) => sum + values[place]!, 0) > LARGE_LOSS,
-    );
+    const isExtreme = fits.some(({ values, places, rates }) => losesMuch(values, places, rates));
     fits.sort(byLikeliness);
     fits = fits.map((fit, i) => (i === 0 || isExtreme ? (fitAs(fit.event, path, fit) ?? fit) : fit));
     if (isExtreme) fits.sort(byLikeliness);
@@ -113,6 +110,7 @@ function fitOf(view: RunView, { data, fit, decayKnown, doubt }: Found): Fit {
     elapsed,
     residuals: fit.residuals,
     missing: decayKnown ? [] : ['end_amplitude'],
+    motion: motionOf(fit),
   };
 }
 
@@ -177,6 +175,27 @@ function decayShare(data: MotionData, fit: MotionFit, place: number): number {
   const byMarks = Math.hypot(...markWeights(fit, place)) * fit.jitter;
   const known = Math.hypot(byMarks, blockShare(fit, place), amplitudeShare(data, fit, place));
   return Math.sqrt(Math.max(fit.covariance[place]![place]! - known ** 2, 0));
+}
+
+function motionOf(fit: MotionFit): Fit['motion'] {
+  const { places, values, covariance, rates, chances } = fit;
+  const measured = (place: number, per = 1) => ({
+    value: values[place]! / per,
+    u: Math.sqrt(Math.max(covariance[place]![place]!, 0)) / per,
+  });
+  const angular = (2 * Math.PI) / values[places.period]!;
+  const acts = (k: number) => LOSS_SETS.reduce((sum, set, m) => sum + (set.some((one) => one === k) ? chances[m]! : 0), 0);
+  return {
+    event: fit.event,
+    path: fit.path,
+    converged: fit.converged,
+    release: { swing: fit.from, time: values[places.start]!, amplitude: measured(places.amplitude) },
+    viscous: measured(places.losses[0], rates[0] / angular),
+    quadratic: measured(places.losses[1], rates[1]),
+    dry: measured(places.losses[2], rates[2]),
+    chances: { viscous: acts(0), quadratic: acts(1), dry: acts(2) },
+    gateAngle: places.gateAngle < 0 ? null : measured(places.gateAngle),
+  };
 }
 
 /** At the first mark's swing (0) or the last one's (1). */

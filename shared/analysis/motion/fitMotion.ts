@@ -2,7 +2,8 @@ import { invert } from '../../statistics/invert';
 import { quantile } from '../../statistics/quantile';
 import { averageLosses } from './averageLosses';
 import type { MotionData } from './motionData';
-import { lossRates, placesOf, shapeOf, type Places } from './motionUnknowns';
+import { slopes } from '../../physics/motion/averagedMotion';
+import { dampingOf, lossRates, placesOf, shapeOf, type Places } from './motionUnknowns';
 import {
   isIntegrable,
   predictAveraged,
@@ -64,12 +65,12 @@ export interface FitOptions {
 
 const TWO_PI = 2 * Math.PI;
 const MOST_STEPS = 25;
+const MOST_INTEGRATED_STEPS = 15;
 /** A step this small, in standard uncertainties, is the last. */
 const SETTLED = 1e-3;
 const LARGEST = (179.5 / 180) * Math.PI;
-/** Where averaged slopes are no good guide any more: rad, and share lost in a swing. */
-export const LARGE_AMPLITUDE = 1.3;
-export const LARGE_LOSS = 0.04;
+/** Where so large a share of the amplitude goes in the first swing, the averaged law is no good guide. */
+const LARGE_LOSS = 0.04;
 /** With fewer marks left over, they do not tell their jitter. */
 const FEWEST_FREE = 1.5;
 /** Blocks further off than this many standard deviations count less. */
@@ -108,9 +109,10 @@ export function fitMotion(
   const predict = isIntegrated ? predictWith(predictIntegrated) : averaged;
 
   const setOut = (mixture: readonly number[]) => firstValues(places, begin, mixture);
-  let values = options.near ? [...options.near.values] : bestOf(MIXTURES.map(setOut), averaged, data);
-  let prediction = values && predict(values);
-  if (!values || !prediction) return undefined;
+  const first = options.near ? [...options.near.values] : bestOf(MIXTURES.map(setOut), averaged, data);
+  let values = first ?? [];
+  let prediction = first && predict(first);
+  if (!prediction) return undefined;
   let jitter = options.near?.jitter ?? Math.max(begin.jitter, options.leastJitter);
   let blockJitter = options.near?.blockJitter ?? 0;
   let readingFactor = options.near?.readingFactor ?? 1;
@@ -119,13 +121,13 @@ export function fitMotion(
   let state: Linear | undefined;
   let columns: Slopes | undefined;
   let steps = 0;
-  for (; steps < MOST_STEPS && !converged; steps += 1) {
-    const loss = places.losses.reduce((sum, place) => sum + values[place]!, 0);
-    const isExtreme = values[places.amplitude]! > LARGE_AMPLITUDE || loss > LARGE_LOSS;
-    const slopesBy = isIntegrated && isExtreme ? predict : averaged;
-    const base = slopesBy === predict ? prediction : averaged(values);
-    const found = base && slopesOf(values, places, base, slopesBy, data);
-    columns = found ?? columns;
+  for (; steps < (isIntegrated ? MOST_INTEGRATED_STEPS : MOST_STEPS) && !converged; steps += 1) {
+    // Slopes need not be exact for a step to lead on; integrated ones cost five integrations, and are kept.
+    const slopesBy = isIntegrated && losesMuch(values, places, rates) ? predict : averaged;
+    if (slopesBy === averaged || steps < 2) {
+      const base = slopesBy === predict ? prediction : averaged(values);
+      columns = (base && slopesOf(values, places, base, slopesBy, data)) ?? columns;
+    }
     if (!columns) return undefined;
     const left = leftOver(values, places, prediction, data);
     const free = data.times.length - taken.marks;
@@ -169,6 +171,12 @@ export function fitMotion(
     steps,
   };
   return values.every(Number.isFinite) && state.covariance.every((row) => row.every(Number.isFinite)) ? fit : undefined;
+}
+
+/** Whether the averaged law is too rough to judge by. */
+export function losesMuch(values: number[], places: Places, rates: readonly number[]): boolean {
+  const amplitude = values[places.amplitude]!;
+  return -slopes(amplitude, dampingOf(values, places, rates))[0] > LARGE_LOSS * amplitude;
 }
 
 /** Parts of the loss to set out with: viscous, quadratic, dry. */
@@ -238,11 +246,11 @@ function slopesOf(
 ): Slopes | undefined {
   const scale = values[places.period]! / TWO_PI;
   const zeros = () => Array.from({ length: places.count }, () => new Float64Array(0));
-  const slopes: Slopes = { times: zeros(), blocked: zeros(), amplitudes: zeros() };
+  const found: Slopes = { times: zeros(), blocked: zeros(), amplitudes: zeros() };
   const set = (place: number, times: Float64Array, blocked: Float64Array, amplitudes: Float64Array) => {
-    slopes.times[place] = times;
-    slopes.blocked[place] = blocked;
-    slopes.amplitudes[place] = amplitudes;
+    found.times[place] = times;
+    found.blocked[place] = blocked;
+    found.amplitudes[place] = amplitudes;
   };
   const none = {
     times: new Float64Array(base.times.length),
@@ -276,7 +284,7 @@ function slopesOf(
       base.amplitudes.map((a, i) => (moved.amplitudes[i]! - a) / by),
     );
   }
-  return slopes;
+  return found;
 }
 
 function jitterOf(left: Float64Array, free: number, { usualJitter, leastJitter }: FitOptions): number {

@@ -65,6 +65,6 @@ function gateOf({ capture, marks }: RunView): GateData | undefined {
   if (!width || !distance) return { blocked: undefined, flag: 0, flagU: 0 };
   const blocked = marks
     .filter((mark) => mark.swing !== null)
-    .map(({ mark }) => (capture.block_us[mark]![1] - capture.block_us[mark]![0]) / 1e6);
+    .map((mark) => mark.blockedTime!);
   return { blocked, flag: width / distance, flagU: FLAG_WIDTH_U / (width * 1e-6) };
 }
