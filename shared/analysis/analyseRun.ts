@@ -8,8 +8,8 @@ import { foldRun } from '../timing/foldRun';
 import type { RunView } from '../timing/runView';
 import { degrees } from '../units/angle';
 import { findFlags } from './findFlags';
-import { lineMethod } from './lineMethod';
 import type { Estimate, Fit } from './method';
+import { motionMethod } from './motionMethod';
 import { stateResult } from './stateResult';
 
 /** A raw run or edit with the digest of its canonical text. */
@@ -19,7 +19,7 @@ export interface Sealed<T> {
 }
 
 /** The method in use; a run analysed by another is analysed anew. */
-export const METHOD = lineMethod;
+export const METHOD = motionMethod;
 
 /**
  * Everything that is computed from a run and its edits: the one entry for phone and server, which
@@ -57,6 +57,7 @@ export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<
     amplitude: smallPeriod && amplitudeOf(fit),
     jitter_s: fit.jitter,
     lag1: fit.lag1,
+    motion: motionOf(fit),
     length_m: length,
     g_m_s2: gravity && stateResult(gravity.value, gravity.shares),
     budget: (smallPeriod && fit.smallPeriod?.shares) ?? (period && fit.period?.shares) ?? [],
@@ -79,6 +80,29 @@ function amplitudeOf({ amplitude }: Fit): Analysis['amplitude'] {
     start_deg: inDegrees(amplitude.start),
     end_deg: inDegrees(amplitude.end),
     decay_known: amplitude.decayKnown,
+  };
+}
+
+/** From this chance on, a law counts as the one that acts. */
+const LIKELY = 0.8;
+
+function motionOf({ motion }: Fit): Analysis['motion'] {
+  if (!motion) return null;
+  const inDegrees = ({ value, u }: { value: number; u: number }) => ({ value: degrees(value), u: degrees(u) });
+  const { event, path, converged, release, chances, gateAngle } = motion;
+  const acting = (['viscous', 'quadratic', 'dry'] as const).filter((law) => chances[law] >= LIKELY);
+  const [law] = acting;
+  const alone = law && Object.entries(chances).every(([other, chance]) => other === law || chance < 1 / 2);
+  return {
+    ...{ event, path, converged, chances },
+    release_swing: release.swing,
+    release_s: release.time,
+    release_deg: inDegrees(release.amplitude),
+    gamma_per_s: motion.viscous,
+    beta: motion.quadratic,
+    c: motion.dry,
+    law: alone ? law : acting.length > 1 ? 'mixed' : 'not_known',
+    gate_angle_deg: gateAngle && inDegrees(gateAngle),
   };
 }
 

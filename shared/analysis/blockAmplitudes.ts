@@ -25,10 +25,7 @@ export function blockAmplitudes(view: RunView, smallPeriod: number, limp: number
   const flag = capture.flag_width_um / capture.flag_distance_um;
   const blocks = view.marks
     .filter((mark) => mark.swing !== null)
-    .map((mark) => {
-      const [blocked, cleared] = capture.block_us[mark.mark]!;
-      return { swing: mark.swing!, blockedTime: (cleared - blocked) / 1e6 };
-    });
+    .map((mark) => ({ swing: mark.swing!, blockedTime: mark.blockedTime! }));
   const size = Math.max(Math.ceil(blocks.length / MOST_GROUPS), Math.min(4, blocks.length));
   const points: AmplitudePoint[] = [];
   for (let i = 0; i + size <= blocks.length; i += size) {

@@ -55,6 +55,7 @@ export const lineMethod: Method = {
       elapsed,
       residuals: corrected.residuals,
       missing: amplitudes.decayKnown ? [] : ['end_amplitude'],
+      motion: null,
     };
   },
 };
@@ -68,6 +69,7 @@ const NOTHING: Fit = {
   elapsed: [],
   residuals: [],
   missing: [],
+  motion: null,
 };
 /** The amplitudes from a gate need T0, and T0 needs them; each turn brings the factor A²/8 or less. */
 const GATE_TURNS = 8;

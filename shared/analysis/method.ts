@@ -31,6 +31,26 @@ export interface Fit {
   /** For each mark in force, observed minus calculated, s; empty when nothing was fitted. */
   residuals: number[];
   missing: (typeof MISSING)[number][];
+  /** The motion behind it; null when none was fitted. */
+  motion: FittedMotion | null;
+}
+
+/** A pendulum's motion as fitted. */
+export interface FittedMotion {
+  /** What was marked: passes of the lowest point or turning points. */
+  event: 'pass' | 'turn';
+  path: 'averaged' | 'integrated';
+  converged: boolean;
+  /** The turning point it is followed from: its swing, when it was, s since the first raw mark, and its amplitude, rad. */
+  release: { swing: number; time: number; amplitude: Measured };
+  /** γ in 1/s, β and c. */
+  viscous: Measured;
+  quadratic: Measured;
+  dry: Measured;
+  /** How likely it is that each term acts, in [0, 1]. */
+  chances: { viscous: number; quadratic: number; dry: number };
+  /** Where a gate stands, from the lowest point to the side of the release, rad. */
+  gateAngle: Measured | null;
 }
 
 /** A way to get periods out of a run. Pure; the id goes into the key of every analysis made with it. */

@@ -33,7 +33,7 @@ export function smallPeriodsElapsed(curve: AmplitudeCurve, swings: number[]): nu
  * @param from   swing, and
  * @param to     a later one
  * @returns      ≥ 1
- * @example meanPeriodRatio({ from: 0, to: 30, first: radians(20), last: radians(12), law: 0 }, 0, 30) // 1.00485
+ * @example meanPeriodRatio({ from: 0, to: 30, first: radians(20), last: radians(12), law: 0 }, 0, 30) // 1.00479
  */
 export function meanPeriodRatio(curve: AmplitudeCurve, from: number, to: number): number {
   return integral(curve, from, to) / (to - from);

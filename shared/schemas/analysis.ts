@@ -52,6 +52,29 @@ export const Result = Measured.extend({
 });
 export type Result = z.infer<typeof Result>;
 
+/**
+ * The motion fitted to a run: θ″ = −ω0² sin θ − 2 γ θ′ − β θ′|θ′| − c ω0² sgn θ′ with ω0 = 2π/T0, from rest at
+ * the release.
+ */
+export const Motion = z.strictObject({
+  event: z.enum(['pass', 'turn']),
+  /** 'averaged' for runs too long to integrate. */
+  path: z.enum(['averaged', 'integrated']),
+  converged: z.boolean(),
+  release_swing: z.number(),
+  /** Since the first raw mark; it may lie before it. */
+  release_s: z.number(),
+  release_deg: Measured,
+  gamma_per_s: Measured,
+  beta: Measured,
+  c: Measured,
+  /** How likely each term is to act. `law` is the one that acts alone, if that is more likely than not. */
+  chances: z.strictObject({ viscous: z.number(), quadratic: z.number(), dry: z.number() }),
+  law: z.enum(['viscous', 'quadratic', 'dry', 'mixed', 'not_known']),
+  gate_angle_deg: Measured.nullable(),
+});
+export type Motion = z.infer<typeof Motion>;
+
 export const MISSING = ['marks', 'amplitude', 'end_amplitude', 'length', 'swings'] as const;
 
 export const Analysis = z.strictObject({
@@ -80,6 +103,8 @@ export const Analysis = z.strictObject({
   /** s.d. of the residuals, s, and their lag-1 correlation. */
   jitter_s: z.number().min(0).nullable(),
   lag1: z.number().min(-1).max(1).nullable(),
+  /** Null when none was fitted, or by methods that fit none. */
+  motion: Motion.nullable().default(null),
   length_m: Measured.nullable(),
   g_m_s2: Result.nullable(),
   budget: z.array(BudgetLine),

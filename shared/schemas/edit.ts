@@ -21,6 +21,7 @@ export const FLAG_CODES = [
   'late_first_mark',
   'clock_gap',
   'cut_short',
+  'chatter',
 ] as const;
 export type FlagCode = (typeof FLAG_CODES)[number];
 

@@ -1,5 +1,12 @@
 import type { LineFit } from './fitLine';
 
+/**
+ * Residuals of a fit in which the value of interest is Σ slopeWeights[i] y[i] and the points pull the model
+ * along the columns of `basis` (basis basisᵀ is the hat matrix; columns are shorter than 1 where other
+ * knowledge holds the model back).
+ */
+export type Scattered = Pick<LineFit, 'residuals' | 'slopeWeights' | 'basis'>;
+
 export interface SlopeUncertainty {
   /** Standard uncertainty of the slope. */
   u: number;
@@ -22,18 +29,16 @@ const FEWEST_DOF = 3;
  * fall in with the swing. The errors are taken as a first-order autoregressive series.
  *
  * The residuals' own lag-1 correlation is too low, because the line has taken part of any slow drift;
- * it is corrected for that and raised by half its standard error, and a negative one counts as none:
- * it would make the uncertainty smaller on weak evidence. The factors were set by simulation, with
- * coverage of the 95 % interval between 0.95 and 0.98 for 8 to 81 points and correlation 0 to 0.3, and
- * 0.91 to 0.955 at 0.6.
+ * it is corrected for that, and a negative one counts as none: it would make the uncertainty smaller on
+ * weak evidence.
  *
  * @param fit  three or more points more than a line has unknowns to be of use
  * @returns    undefined when no point is left over to judge by
  * @see bias of the lag-1 correlation about a fitted trend: Tjøstheim & Paulsen, Biometrika 70, 389 (1983)
  */
-export function slopeUncertainty(fit: LineFit): SlopeUncertainty | undefined {
+export function slopeUncertainty(fit: Scattered): SlopeUncertainty | undefined {
   const n = fit.residuals.length;
-  const unknowns = fit.basis.length;
+  const unknowns = degreesTaken(fit);
   const free = n - unknowns;
   if (free < 1) return undefined;
   const squares = fit.residuals.reduce((sum, r) => sum + r * r, 0);
@@ -49,14 +54,17 @@ export function slopeUncertainty(fit: LineFit): SlopeUncertainty | undefined {
   };
 }
 
-function cautiousCorrelation(lag1: number, fit: LineFit): number {
+/** How many degrees of freedom a basis takes: one a column of unit length. */
+function degreesTaken({ basis }: Scattered): number {
+  return basis.reduce((sum, column) => sum + column.reduce((s, v) => s + v * v, 0), 0);
+}
+
+function cautiousCorrelation(lag1: number, fit: Scattered): number {
   const n = fit.residuals.length;
-  const unknowns = fit.basis.length;
+  const unknowns = degreesTaken(fit);
   // Expected lag-1 of residuals of independent errors is minus this sum over n − unknowns.
   const drift = fit.basis.reduce((sum, column) => sum + neighbours(column), 0) / (n - unknowns);
-  const corrected = ((lag1 + drift) * n) / Math.max(n - 2 * unknowns, 2);
-  const standardError = Math.sqrt(Math.max(1 - corrected ** 2, 0) / n);
-  return Math.min(Math.max(corrected + standardError / 2, 0), LARGEST_CORRELATION);
+  return Math.min(Math.max(((lag1 + drift) * n) / Math.max(n - 2 * unknowns, 2), 0), LARGEST_CORRELATION);
 }
 
 /** Σ v[i] v[i−1]. */
@@ -66,8 +74,8 @@ function neighbours(v: number[]): number {
   return sum;
 }
 
-/** vᵀRv with R[i][j] = rho^|i−j|, in one pass. */
-function quadraticForm(v: number[], rho: number): number {
+/** vᵀRv with R[i][j] = rho^|i−j|, in one pass: the variance of Σ v[i] e[i] for errors e of unit variance and lag-1 correlation rho. */
+export function quadraticForm(v: number[], rho: number): number {
   let sum = 0;
   let carried = 0;
   for (const x of v) {

@@ -1,4 +1,5 @@
 import { exp, log } from '../physics/elementary';
+import { logGamma } from './logGamma';
 
 /**
  * Quantile of Student's t: the factor t such that a share `coverage` of the distribution lies within ±t.
@@ -65,17 +66,4 @@ function betaFraction(x: number, a: number, b: number): number {
 /** ln B(a, b). Large arguments by the difference of Stirling series, because ln Γ itself would cancel. */
 function logBeta(a: number, b: number): number {
   return logGamma(a) + logGamma(b) - logGamma(a + b);
-}
-
-/** ln Γ(z) for z > 0: recurrence up to 15, then Stirling's series. Abramowitz & Stegun 6.1.41. */
-function logGamma(z: number): number {
-  let shift = 0;
-  let x = z;
-  while (x < 15) {
-    shift += log(x);
-    x += 1;
-  }
-  const s = 1 / (x * x);
-  const series = (1 / 12 - s * (1 / 360 - s * (1 / 1260 - s * (1 / 1680 - s / 1188)))) / x;
-  return (x - 0.5) * log(x) - x + 0.5 * log(2 * Math.PI) + series - shift;
 }

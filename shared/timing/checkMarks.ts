@@ -1,5 +1,6 @@
 import type { Flag } from '../schemas/analysis';
 import type { Measured } from '../schemas/common';
+import { checkChatter } from './checkChatter';
 import { checkCount } from './checkCount';
 import { checkFirstMark } from './checkFirstMark';
 import { checkLaps } from './checkLaps';
@@ -26,6 +27,7 @@ export function checkMarks(view: RunView, known: Known): Flag[] {
     ...laps,
     // With laps in doubt the line is no judge of the first mark or the count.
     ...(laps.length === 0 ? [...checkFirstMark(view, known), ...checkCount(view, known)] : []),
+    ...checkChatter(view),
     ...checkRecording(view),
   ];
   return findings.map((finding) => ({

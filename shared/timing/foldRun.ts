@@ -35,9 +35,16 @@ export function foldRun(run: RawRun, edits: RawEdit[]): RunView {
     };
   }
 
-  const times = capture.kind === 'gate' ? gateMarks(capture) : capture.mark_us.map((us) => us / 1e6);
-  const numbered = numberMarks(times, { swingsPerMark, leftOut: leftOut(changes), gaps: gaps(run, changes) });
-  const marks = setSwings === undefined ? numbered.marks : spreadSwings(numbered.marks, setSwings, swingsPerMark);
+  const blocks = capture.kind === 'gate' ? gateMarks(capture) : [];
+  const times = capture.kind === 'gate' ? blocks.map((block) => block.time) : capture.mark_us.map((us) => us / 1e6);
+  const out = leftOut(changes);
+  const pieces = new Set([...out, ...blocks.flatMap(({ partOf }, i) => (partOf === null ? [] : [i]))]);
+  const numbered = numberMarks(times, { swingsPerMark, leftOut: pieces, gaps: gaps(run, changes) });
+  const withBlocks = numbered.marks.map((mark, i) => {
+    const block = blocks[i];
+    return block ? { ...mark, blockedTime: block.blockedTime, partOf: out.has(i) ? null : block.partOf } : mark;
+  });
+  const marks = setSwings === undefined ? withBlocks : spreadSwings(withBlocks, setSwings, swingsPerMark);
   const used = marks.filter((mark) => !mark.leftOut);
   const [first, last] = [used[0], used.at(-1)];
   return {

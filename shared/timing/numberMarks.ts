@@ -39,7 +39,10 @@ export function numberMarks(times: number[], { swingsPerMark, leftOut, gaps }: N
       swing = steps * swingsPerMark;
       [from, skipped, gap] = [mark, 0, 0];
     }
-    marks.push({ mark, time, swing, leftOut: isOut, gap: mark === 0 ? 0 : (gaps.get(mark) ?? 0) });
+    marks.push({
+      ...{ mark, time, swing, leftOut: isOut, gap: mark === 0 ? 0 : (gaps.get(mark) ?? 0) },
+      ...{ blockedTime: null, partOf: null },
+    });
   });
   return { marks, origin };
 }

@@ -13,6 +13,10 @@ export interface ViewMark {
   leftOut: boolean;
   /** Marks missing before this one, as told on the pad or by an edit. */
   gap: number;
+  /** s the beam of a gate was broken; null for hands. */
+  blockedTime: number | null;
+  /** Of a gate's block that chatter broke apart: the piece that stands for this one. Null once somebody left it out. */
+  partOf: number | null;
 }
 
 /** A run with its edits laid over it: what is in force now. Times in s, swings counted there and back. */

@@ -37,6 +37,7 @@ export const routes: RouteRecordRaw[] = [
     children: [
       { path: '', name: 'bench', component: () => import('@/pages/BenchPage.vue') },
       { path: 'rig', name: 'rig', component: () => import('@/pages/RigPage.vue') },
+      { path: 'plan', name: 'planner', component: () => import('@/pages/PlannerPage.vue') },
       { path: 'key-in', name: 'keyIn', component: () => import('@/pages/KeyInPage.vue') },
       { path: 'gate', name: 'gate', component: () => import('@/pages/GatePage.vue') },
       { path: 'runs/:id', name: 'run', component: () => import('@/pages/RunPage.vue') },

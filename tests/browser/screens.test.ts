@@ -82,6 +82,7 @@ describe('every screen', () => {
       '/settings',
       '/bench',
       '/bench/rig',
+      '/bench/plan',
       '/bench/pad',
       '/bench/key-in',
     );

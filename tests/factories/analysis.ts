@@ -23,6 +23,7 @@ export function analysisOf(off_ms: (number | null)[], parts: Partial<Analysis> =
     amplitude: null,
     jitter_s: 0.04,
     lag1: 0.1,
+    motion: null,
     length_m: null,
     g_m_s2: null,
     budget: [],

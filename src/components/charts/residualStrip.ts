@@ -31,6 +31,7 @@ export const FLAG_SHAPES: Record<FlagCode, Shape> = {
   count_from_one: 'star',
   clock_gap: 'cross',
   cut_short: 'ring',
+  chatter: 'cross',
 };
 
 export function stripPoints(analysis: Analysis): StripPoint[] {
