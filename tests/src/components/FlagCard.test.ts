@@ -4,7 +4,7 @@ import { analyseRun } from '@shared/analysis/analyseRun';
 import { canonicalText, digestOf } from '@shared/schemas/canonical';
 import { EditChange, FLAG_CODES, type FlagCode } from '@shared/schemas/edit';
 import type { RawRun } from '@shared/schemas/run';
-import { keyed, metreRig, tapped, tappedWithDouble, tenDegrees } from '../../factories/captures';
+import { gated, keyed, metreRig, tapped, tappedWithDouble, tenDegrees } from '../../factories/captures';
 import { mountApp } from '../support/mountApp';
 import { plugIn } from '../support/network';
 import { rawRun } from '../support/samples';
@@ -25,7 +25,17 @@ const PLANTED: Record<FlagCode, Partial<RawRun>> = {
     capture: tapped({ events: [{ kind: 'clock_gap', at_us: 9_000_000, after_mark: 4, wall_minus_mono_ms: 2500 }] }),
   },
   cut_short: { capture: tapped({ ended: 'cut_short' }) },
+  chatter: { capture: brokenBlock() },
 };
+
+/** A gate run whose sixth block is broken in two for a tenth of a millisecond. */
+function brokenBlock(): RawRun['capture'] {
+  const whole = gated();
+  const [on, off] = whole.block_us[5]!;
+  const middle = Math.round((on + off) / 2);
+  const block_us = whole.block_us.toSpliced(5, 1, [on, middle - 50], [middle + 50, off]);
+  return { ...whole, block_us };
+}
 
 function found(code: FlagCode) {
   const content = rawRun(PLANTED[code]);
