@@ -33,9 +33,10 @@ export function findFlags(
   return [...now, ...before.filter((flag) => !isNow(flag)).map((flag) => ({ ...flag, answered: true }))];
 }
 
-function flagsOf(view: RunView, { elapsed, period, smallPeriod }: Fit): Flag[] {
+function flagsOf(view: RunView, { elapsed, residuals, period, smallPeriod }: Fit): Flag[] {
   return checkMarks(view, {
     elapsed,
+    residuals,
     period: period && stateResult(period.value, period.shares),
     smallPeriod: smallPeriod && stateResult(smallPeriod.value, smallPeriod.shares),
   });

@@ -19,6 +19,7 @@ export const FLAG_CODES = [
   'half_swings',
   'count_from_one',
   'late_first_mark',
+  'outlier',
   'clock_gap',
   'cut_short',
   'chatter',

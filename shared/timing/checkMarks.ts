@@ -4,12 +4,15 @@ import { checkChatter } from './checkChatter';
 import { checkCount } from './checkCount';
 import { checkFirstMark } from './checkFirstMark';
 import { checkLaps } from './checkLaps';
+import { checkOutliers } from './checkOutliers';
 import type { RunView } from './runView';
 
 /** What a fit has found so far; null and empty while there is nothing. */
 export interface Known {
   /** For each mark in force: what grows evenly with time. */
   elapsed: number[];
+  /** For each mark in force, observed minus calculated, s. */
+  residuals: number[];
   period: Measured | null;
   smallPeriod: Measured | null;
 }
@@ -25,8 +28,10 @@ export function checkMarks(view: RunView, known: Known): Flag[] {
   const laps = checkLaps(view);
   const findings = [
     ...laps,
-    // With laps in doubt the line is no judge of the first mark or the count.
-    ...(laps.length === 0 ? [...checkFirstMark(view, known), ...checkCount(view, known)] : []),
+    // With laps in doubt the line is no judge of single marks or the count.
+    ...(laps.length === 0
+      ? [...checkFirstMark(view, known), ...checkOutliers(view, known), ...checkCount(view, known)]
+      : []),
     ...checkChatter(view),
     ...checkRecording(view),
   ];

@@ -27,6 +27,7 @@ export const FLAG_SHAPES: Record<FlagCode, Shape> = {
   double: 'diamond',
   missed: 'square',
   late_first_mark: 'triangle',
+  outlier: 'star',
   half_swings: 'plus',
   count_from_one: 'star',
   clock_gap: 'cross',

@@ -21,6 +21,7 @@ const PLANTED: Record<FlagCode, Partial<RawRun>> = {
   half_swings: { capture: tapped({ mark_us: mark_us.map((us) => Math.round(us / 2)) }), rig: metreRig },
   count_from_one: { capture: keyed({ total_us: 38_150_000 }), rig: metreRig, amplitudes: tenDegrees },
   late_first_mark: { capture: tapped({ mark_us: mark_us.map((us, i) => (i === 0 ? 0 : us - 300_000)) }) },
+  outlier: { capture: tapped({ mark_us: mark_us.map((us, i) => (i === 9 ? us + 350_000 : us)) }) },
   clock_gap: {
     capture: tapped({ events: [{ kind: 'clock_gap', at_us: 9_000_000, after_mark: 4, wall_minus_mono_ms: 2500 }] }),
   },
