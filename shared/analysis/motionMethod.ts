@@ -184,7 +184,8 @@ function motionOf(fit: MotionFit): Fit['motion'] {
     u: Math.sqrt(Math.max(covariance[place]![place]!, 0)) / per,
   });
   const angular = (2 * Math.PI) / values[places.period]!;
-  const acts = (k: number) => LOSS_SETS.reduce((sum, set, m) => sum + (set.some((one) => one === k) ? chances[m]! : 0), 0);
+  const acts = (k: number) =>
+    LOSS_SETS.reduce((sum, set, m) => sum + (set.some((one) => one === k) ? chances[m]! : 0), 0);
   return {
     event: fit.event,
     path: fit.path,

@@ -78,5 +78,9 @@ function withSet(set: readonly number[], { values, information, gradient }: Loss
   root.forEach((row, i) => (logEvidence -= Math.log(row[i]!)));
   const all = (of: (i: number) => number) => [0, 1, 2].map((k) => (set.includes(k) ? of(set.indexOf(k)) : 0));
   if (!Number.isFinite(logEvidence)) return undefined;
-  return { logEvidence, mean: all((i) => bounded.mean[i]!), covariance: [0, 1, 2].map((k) => all((j) => (set.includes(k) ? bounded.covariance[set.indexOf(k)]![j]! : 0))) };
+  return {
+    logEvidence,
+    mean: all((i) => bounded.mean[i]!),
+    covariance: [0, 1, 2].map((k) => all((j) => (set.includes(k) ? bounded.covariance[set.indexOf(k)]![j]! : 0))),
+  };
 }

@@ -142,7 +142,11 @@ export function fitMotion(
     const size = Math.max(...state.mean.map((v, i) => Math.abs(v - values[i]!) / Math.sqrt(state!.covariance[i]![i]!)));
     values = moved.values;
     prediction = moved.prediction;
-    const jitterThen = jitterOf(leftOver(values, places, prediction, data).times, data.times.length - taken.marks, options);
+    const jitterThen = jitterOf(
+      leftOver(values, places, prediction, data).times,
+      data.times.length - taken.marks,
+      options,
+    );
     converged = size < SETTLED && Math.abs(jitterThen / jitter - 1) < 1e-3;
   }
   if (!state || !columns) return undefined;
@@ -208,7 +212,8 @@ function bestOf(
   let least = Infinity;
   for (const start of starts) {
     const found = predict(start);
-    const off = found && readings.reduce((sum, { amplitude, u }, i) => sum + ((amplitude - found.amplitudes[i]!) / u) ** 2, 0);
+    const off =
+      found && readings.reduce((sum, { amplitude, u }, i) => sum + ((amplitude - found.amplitudes[i]!) / u) ** 2, 0);
     if (off === undefined || off >= least) continue;
     [best, least] = [start, off];
   }
@@ -257,9 +262,25 @@ function slopesOf(
     blocked: new Float64Array(base.blocked.length),
     amplitudes: new Float64Array(base.amplitudes.length),
   };
-  set(places.start, none.times.map(() => 1), none.blocked, none.amplitudes);
-  set(places.period, base.times.map((t) => t / TWO_PI), base.blocked.map((t) => t / TWO_PI), none.amplitudes);
-  if (places.limp >= 0) set(places.limp, none.times.map((_, i) => (data.isOdd![i] ? 1 : 0)), none.blocked, none.amplitudes);
+  set(
+    places.start,
+    none.times.map(() => 1),
+    none.blocked,
+    none.amplitudes,
+  );
+  set(
+    places.period,
+    base.times.map((t) => t / TWO_PI),
+    base.blocked.map((t) => t / TWO_PI),
+    none.amplitudes,
+  );
+  if (places.limp >= 0)
+    set(
+      places.limp,
+      none.times.map((_, i) => (data.isOdd![i] ? 1 : 0)),
+      none.blocked,
+      none.amplitudes,
+    );
   if (places.gateAngle >= 0) {
     set(
       places.gateAngle,
@@ -270,11 +291,17 @@ function slopesOf(
   }
   if (places.flagError >= 0) {
     const share = 1 + values[places.flagError]!;
-    set(places.flagError, none.times, base.blocked.map((t) => (t * scale) / share), none.amplitudes);
+    set(
+      places.flagError,
+      none.times,
+      base.blocked.map((t) => (t * scale) / share),
+      none.amplitudes,
+    );
   }
   const amplitude = values[places.amplitude]!;
   for (const place of [places.amplitude, ...places.losses]) {
-    const by = place === places.amplitude ? -1e-4 * Math.min(amplitude, Math.PI - amplitude) : 1e-5 + 1e-3 * values[place]!;
+    const by =
+      place === places.amplitude ? -1e-4 * Math.min(amplitude, Math.PI - amplitude) : 1e-5 + 1e-3 * values[place]!;
     const moved = predict(values.map((v, i) => (i === place ? v + by : v)));
     if (!moved) return undefined;
     set(
@@ -392,9 +419,13 @@ function splitLosses(
     {
       values: losses.map((loss) => values[loss]!),
       information: losses.map((a) =>
-        losses.map((b, k) => information[a]![b]! + plain.reduce((sum, i, j) => sum + information[a]![i]! * follow[j]![k]!, 0)),
+        losses.map(
+          (b, k) => information[a]![b]! + plain.reduce((sum, i, j) => sum + information[a]![i]! * follow[j]![k]!, 0),
+        ),
       ),
-      gradient: losses.map((loss) => gradient[loss]! - plain.reduce((sum, i, j) => sum + information[loss]![i]! * alone[j]!, 0)),
+      gradient: losses.map(
+        (loss) => gradient[loss]! - plain.reduce((sum, i, j) => sum + information[loss]![i]! * alone[j]!, 0),
+      ),
     },
     { sum: begin.loss, spread: begin.lossSpread },
   );
@@ -402,7 +433,10 @@ function splitLosses(
   const mean = [...values];
   losses.forEach((loss, k) => (mean[loss] = found.mean[k]!));
   plain.forEach((i, j) => {
-    mean[i] = values[i]! + alone[j]! + losses.reduce((sum, loss, k) => sum + follow[j]![k]! * (found.mean[k]! - values[loss]!), 0);
+    mean[i] =
+      values[i]! +
+      alone[j]! +
+      losses.reduce((sum, loss, k) => sum + follow[j]![k]! * (found.mean[k]! - values[loss]!), 0);
   });
   const spread = (ofLosses: number[][]) => {
     const c = values.map(() => values.map(() => 0));
@@ -444,8 +478,7 @@ function moveWithin(
 function unlikeliness(left: LeftOver, marks: number, least: number): number {
   const squares = left.times.reduce((sum, r) => sum + r * r, 0);
   return (
-    Math.max(marks - 3, 0) * Math.log(squares + marks * least ** 2) +
-    left.readings.reduce((sum, r) => sum + r * r, 0)
+    Math.max(marks - 3, 0) * Math.log(squares + marks * least ** 2) + left.readings.reduce((sum, r) => sum + r * r, 0)
   );
 }
 

@@ -63,8 +63,6 @@ function gateOf({ capture, marks }: RunView): GateData | undefined {
   if (capture.kind !== 'gate') return undefined;
   const { flag_width_um: width, flag_distance_um: distance } = capture;
   if (!width || !distance) return { blocked: undefined, flag: 0, flagU: 0 };
-  const blocked = marks
-    .filter((mark) => mark.swing !== null)
-    .map((mark) => mark.blockedTime!);
+  const blocked = marks.filter((mark) => mark.swing !== null).map((mark) => mark.blockedTime!);
   return { blocked, flag: width / distance, flagU: FLAG_WIDTH_U / (width * 1e-6) };
 }
