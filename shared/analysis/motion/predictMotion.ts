@@ -63,7 +63,7 @@ export function predictAveraged(shape: Shape, asked: Questions): Prediction | un
     const x = offCentre / k;
     const speed = 2 * Math.sqrt(k * k - offCentre * offCentre);
     if (!(Math.abs(x) < LARGEST_SHARE)) return undefined;
-    answer.times[i] = time + side * (x + (x * x * x * (1 + k * k)) / 6);
+    answer.times[i] = time + delayOf(amplitude, shape.damping) + side * (x + (x * x * x * (1 + k * k)) / 6);
     answer.timesPerAngle[i] = side / speed;
     if (!asked.hasFlag) continue;
     const short = shape.flag / speed;
@@ -73,6 +73,14 @@ export function predictAveraged(shape: Shape, asked: Questions): Prediction | un
   }
   asked.amplitudesAt.forEach((swing, i) => (answer.amplitudes[i] = averagedAt(table, swing - asked.from).amplitude));
   return answer;
+}
+
+/**
+ * By how much damping makes a pass of the lowest point late against the middle of two turning points: the
+ * perturbation of A cos t at t = π/2 over the speed there, to first order.
+ */
+function delayOf(amplitude: number, { viscous, quadratic, dry }: Damping): number {
+  return viscous + (quadratic * amplitude) / 3 + dry / Math.max(amplitude, 1e-3);
 }
 
 /** A gate farther out than this share of the amplitude is not "near the lowest point". */
