@@ -66,15 +66,18 @@ export async function joinClass(
   return { student, schoolClass, pin };
 }
 
-/** The student who has this PIN, or undefined after as long a wait when there is no such nickname. */
+/** The student who has this PIN, or undefined after as long a wait when there is no such class or nickname. */
 export async function checkPin(
   deps: Deps,
   said: { code: string; bench: number; nickname: string; pin: string },
 ): Promise<{ student: Student; schoolClass: SchoolClass } | undefined> {
-  const schoolClass = await findClassByCode(deps, said.code);
-  const student = await deps.database.models.Student.findOne({
-    where: { class_id: schoolClass.id, bench: said.bench, nickname_key: nicknameKey(said.nickname) },
-  });
+  const { SchoolClass, Student } = deps.database.models;
+  const schoolClass = await SchoolClass.findOne({ where: { code: said.code } });
+  const student =
+    schoolClass &&
+    (await Student.findOne({
+      where: { class_id: schoolClass.id, bench: said.bench, nickname_key: nicknameKey(said.nickname) },
+    }));
   const { matches } = await deps.hasher.verify(student?.pin_hash ?? null, said.pin);
   return student && matches ? { student, schoolClass } : undefined;
 }
