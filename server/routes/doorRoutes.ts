@@ -13,7 +13,6 @@ import {
   SignInRequest,
 } from '@shared/schemas/accounts';
 import { endSession, startSession } from '../middleware/startSession';
-import { nicknameKey } from '../models/Student';
 import { presentMe, presentStaff, presentStudent } from '../presenters/me';
 import { passwordNotMatched, pinNotMatched } from '../services/signIns';
 import {
@@ -23,7 +22,7 @@ import {
   sendResetLink,
   setUpFirstCoordinator,
 } from '../services/staffAccounts';
-import { checkPin, classCard, findClassByCode, joinClass } from '../services/students';
+import { checkPin, classCard, findClassByCode, joinClass, pinAccount } from '../services/students';
 import { route } from './route';
 
 /** Everything a person does to come in, and to leave. */
@@ -59,7 +58,7 @@ export const doorRoutes = [
     summary: 'Come back to a bench with the PIN',
     body: ReturnRequest,
     answer: MeAnswer,
-    limitTries: { account: ({ code, bench, nickname }) => `${code} ${bench} ${nicknameKey(nickname)}` },
+    limitTries: { account: pinAccount, fromAnywhere: true },
     async handler({ deps, body, http }) {
       const found = await checkPin(deps, body);
       if (!found) throw pinNotMatched();
