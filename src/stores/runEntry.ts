@@ -1,7 +1,8 @@
 import { analyseRun } from '@shared/analysis/analyseRun';
 import type { Analysis } from '@shared/schemas/analysis';
+import { digestOf } from '@shared/schemas/canonical';
 import type { RawEdit } from '@shared/schemas/edit';
-import { readEdit, readRun } from '@shared/schemas/readSealed';
+import { EDIT_FORMAT, EDIT_VERSION, RUN_FORMAT, RUN_VERSION } from '@shared/schemas/formats';
 import type { RawRun } from '@shared/schemas/run';
 import type { AnalysisRow, EditRow, RunRow } from '@/db/localStore';
 import type { StoredRuns } from '@/db/runs';
@@ -77,21 +78,28 @@ function makeEntry(row: RunRow, raw: RawRun, editRows: EditRow[], analyses: Anal
 const inForceOrder = (a: EditRow, b: EditRow) =>
   (a.receipt?.server_seq ?? Infinity) - (b.receipt?.server_seq ?? Infinity) || a.created_seq - b.created_seq;
 
-const runOf = readOnce(readRun);
-const editOf = readOnce(readEdit);
+const runOf = readOnce<RawRun>(RUN_FORMAT, RUN_VERSION);
+const editOf = readOnce<RawEdit>(EDIT_FORMAT, EDIT_VERSION);
 
-/** Texts never change, so each is read once; null when it cannot be. */
-function readOnce<T>(read: (raw: string, digest: string) => T): (row: { digest: string; raw: string }) => T | null {
+/**
+ * Reads a kept text, once; null when it cannot be. Bytes that are still those sealed, in a format known here, were
+ * checked when they were sealed and by the server: the schema is not asked again, as a class has many runs.
+ */
+function readOnce<T>(format: string, version: number): (row: { digest: string; raw: string }) => T | null {
   const known = new Map<string, { raw: string; content: T | null }>();
+  const read = (raw: string, digest: string): T | null => {
+    if (digestOf(raw) !== digest) return null;
+    try {
+      const content = JSON.parse(raw) as { format?: unknown; version?: unknown } | null;
+      return content?.format === format && content.version === version ? (content as T) : null;
+    } catch {
+      return null;
+    }
+  };
   return ({ raw, digest }) => {
     const before = known.get(digest);
     if (before?.raw === raw) return before.content;
-    let content: T | null = null;
-    try {
-      content = read(raw, digest);
-    } catch {
-      // Whatever is the matter with it, it is shown as one that cannot be read.
-    }
+    const content = read(raw, digest);
     known.set(digest, { raw, content });
     return content;
   };

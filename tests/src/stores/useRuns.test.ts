@@ -3,6 +3,7 @@ import { flushPromises } from '@vue/test-utils';
 import { afterEach, expect, it, vi } from 'vitest';
 import { mountPage } from '../support/mountApp';
 import { json, plugIn } from '../support/network';
+import { canonicalText, digestOf } from '@shared/schemas/canonical';
 import { CLASS_ID, rawEdit, rawRun, turnedDown } from '../support/samples';
 import BenchPage from '@/pages/BenchPage.vue';
 import HandInPage from '@/pages/HandInPage.vue';
@@ -36,15 +37,19 @@ const swings = (runId: string) => useRuns().entry(runId)?.analysis.swings;
 const refuse = (type: 'run' | 'edit', row: { id: string; digest: string }) =>
   applyVerdicts(store, [turnedDown('refused', { type, id: row.id, digest: row.digest })]);
 
+const sealed = (raw: string) => ({ raw, digest: digestOf(raw) });
+
 it.each([
-  ['is cut off', '{"format":"swaymark-run"'],
-  ['is nothing', 'null'],
-  ['is no run', '{}'],
-])('a run whose text %s stands beside the others, to be saved as it is', async (_how, raw) => {
+  ['was damaged', { raw: canonicalText(rawRun({ note: 'other' })) }],
+  ['is cut off', sealed('{"format":"swaymark-run"')],
+  ['is nothing', sealed('null')],
+  ['is no run', sealed('{}')],
+  ['is of a later format', sealed('{"format":"swaymark-run","version":2}')],
+])('a run whose text %s stands beside the others, to be saved as it is', async (_how, text) => {
   const page = await openPage(BenchPage);
   const good = await addRun(store, rawRun(), HERE);
   const bad = await addRun(store, rawRun(), HERE);
-  await store.runs.update(bad.id, { raw });
+  await store.runs.update(bad.id, text);
   await vi.waitFor(() => expect(useRuns().unreadable.map(({ row }) => row.id)).toEqual([bad.id]));
   expect(useRuns().entries.map(({ row }) => row.id)).toEqual([good.id]);
   await flushPromises();
@@ -57,7 +62,7 @@ it.each([
     return 'blob:kept';
   });
   await page.get('.unreadable-rows button').trigger('click');
-  expect(await saved[0]!.text()).toBe(raw);
+  expect(await saved[0]!.text()).toBe(text.raw);
 });
 
 it('a run that alone is there and cannot be read is not called nothing', async () => {
