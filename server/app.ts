@@ -4,11 +4,13 @@ import { rateLimit } from 'express-rate-limit';
 import type { Deps } from './deps';
 import { AppError } from './errors';
 import { answerErrors, unknownApiRoute } from './middleware/answerErrors';
+import { addressOf } from './middleware/limitTries';
 import { mountRoutes } from './middleware/mountRoutes';
 import { requestLog } from './middleware/requestLog';
 import { sameOrigin } from './middleware/sameOrigin';
 import { securityHeaders } from './middleware/securityHeaders';
 import { staticClient } from './middleware/staticClient';
+import type { RateLimits } from './rateLimits';
 import { routes } from './routes/index';
 
 /** The whole application on one Express app; it listens nowhere by itself. */
@@ -21,10 +23,10 @@ export function createApp(deps: Deps): Express {
   app.use(
     '/api',
     neverStored,
-    requestRate(config.rateLimits.requestsPerMinute),
+    deps.sessions.middleware,
+    requestRate(config.rateLimits),
     sameOrigin(() => deps.publicUrl),
   );
-  app.use('/api', deps.sessions.middleware);
   mountRoutes(app, routes, deps);
   app.use('/api', unknownApiRoute);
   if (config.clientDir) app.use(staticClient(config.clientDir));
@@ -37,12 +39,17 @@ const neverStored: express.RequestHandler = (_req, res, next) => {
   next();
 };
 
-const requestRate = (limit: number) =>
+/** By sign-in where there is one, so that one phone cannot use up what a school behind one address needs. */
+const requestRate = ({ requestsPerSignIn, requestsPerAddress }: RateLimits) =>
   rateLimit({
     windowMs: 60_000,
-    limit,
+    limit: (req) => (req.session.signInId ? requestsPerSignIn : requestsPerAddress),
+    keyGenerator: (req) => req.session.signInId ?? addressOf(req),
+    skip: (req) => req.path === '/health',
     standardHeaders: 'draft-8',
     legacyHeaders: false,
-    handler: (_req, _res, next) =>
-      next(new AppError(429, 'too_many_requests', 'Too many requests come from this network. Wait a minute.')),
+    handler: (req, _res, next) => {
+      const from = req.session.signInId ? 'this sign-in' : 'this network';
+      next(new AppError(429, 'too_many_requests', `Too many requests come from ${from}. Wait a minute.`));
+    },
   });

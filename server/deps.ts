@@ -6,6 +6,7 @@ import type { Database } from './models/openDatabase';
 import type { AnalysisQueue } from './services/analysisQueue';
 import type { BackgroundJobs } from './services/backgroundJobs';
 import type { Hasher } from './services/hasher';
+import type { OpenTries } from './services/openTries';
 import type { TryCounter } from './services/tryCounter';
 
 /** What the parts of one running server share. Made by startServer, handed to every route. */
@@ -22,7 +23,15 @@ export interface Deps {
   mailer: Mailer;
   analyses: AnalysisQueue;
   background: BackgroundJobs;
-  tries: { byAccount: TryCounter; byAddress: TryCounter; resets: TryCounter };
+  /** See RateLimits for what each one counts. */
+  tries: {
+    byAccount: TryCounter;
+    byAccountAnywhere: TryCounter;
+    byAddress: TryCounter;
+    joins: TryCounter;
+    resets: TryCounter;
+    open: OpenTries;
+  };
   /** Milliseconds since 1970. */
   now(): number;
 }

@@ -12,9 +12,11 @@ import { openSessions } from './middleware/sessions';
 import { openDatabase } from './models/openDatabase';
 import { serverEpoch } from './models/serverMeta';
 import { packageVersion } from './packageRoot';
+import type { RateLimits } from './rateLimits';
 import { createAnalysisQueue } from './services/analysisQueue';
 import { createBackgroundJobs } from './services/backgroundJobs';
 import { createHasher } from './services/hasher';
+import { createOpenTries } from './services/openTries';
 import { createTryCounter } from './services/tryCounter';
 
 export interface RunningServer {
@@ -48,7 +50,6 @@ export async function startServer(config: Config, now: () => number = Date.now):
 async function createDeps(config: Config, now: () => number): Promise<Deps> {
   const log = createLog(config);
   const database = await openDatabase(config.dataDir);
-  const { windowMs, failedPerAccount, failedPerAddress, resetsPerAccount } = config.rateLimits;
   return {
     config,
     publicUrl: config.publicUrl ?? '',
@@ -61,12 +62,27 @@ async function createDeps(config: Config, now: () => number): Promise<Deps> {
     mailer: await createMailer(config),
     analyses: createAnalysisQueue(database, log, now),
     background: createBackgroundJobs(log),
-    tries: {
-      byAccount: createTryCounter(failedPerAccount, windowMs, now),
-      byAddress: createTryCounter(failedPerAddress, windowMs, now),
-      resets: createTryCounter(resetsPerAccount, windowMs, now),
-    },
+    tries: createTries(config.rateLimits, now),
     now,
+  };
+}
+
+function createTries(limits: RateLimits, now: () => number): Deps['tries'] {
+  const counter = (limit: number, words?: (minutes: number) => string) =>
+    createTryCounter(limit, limits.windowMs, now, words);
+  return {
+    byAccount: counter(limits.failedPerAccount),
+    byAccountAnywhere: counter(limits.failedPerAccountAnywhere),
+    byAddress: counter(limits.failedPerAddress),
+    joins: counter(
+      limits.joinsPerClass,
+      (minutes) => `Very many people joined this class from this network. Wait ${minutes} min, or tell the teacher.`,
+    ),
+    resets: counter(
+      limits.resetsPerAccount,
+      (minutes) => `Several links were asked for already. Look for the mail, or wait ${minutes} min.`,
+    ),
+    open: createOpenTries(limits.triesAtOnce),
   };
 }
 

@@ -15,7 +15,10 @@ import { i18n } from '@/i18n';
 import { router } from '@/router';
 import { warmFieldPages } from '@/router/warm';
 
-createApp(App)
+const app = createApp(App);
+// What broke is told to the person by the page's ErrorBoundary, and here to whoever looks into the browser.
+app.config.errorHandler = (cause) => reportError(cause);
+app
   .use(createPinia())
   .use(Quasar, { iconSet, config: { ripple: false } })
   .use(i18n)

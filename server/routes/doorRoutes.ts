@@ -12,10 +12,9 @@ import {
   SetUpRequest,
   SignInRequest,
 } from '@shared/schemas/accounts';
-import { AppError } from '../errors';
 import { endSession, startSession } from '../middleware/startSession';
-import { nicknameKey } from '../models/Student';
 import { presentMe, presentStaff, presentStudent } from '../presenters/me';
+import { passwordNotMatched, pinNotMatched } from '../services/signIns';
 import {
   acceptInvite,
   checkPassword,
@@ -23,7 +22,7 @@ import {
   sendResetLink,
   setUpFirstCoordinator,
 } from '../services/staffAccounts';
-import { checkPin, classCard, findClassByCode, joinClass } from '../services/students';
+import { checkPin, classCard, findClassByCode, joinClass, pinAccount } from '../services/students';
 import { route } from './route';
 
 /** Everything a person does to come in, and to leave. */
@@ -48,7 +47,7 @@ export const doorRoutes = [
     limitTries: {},
     async handler({ deps, body, http }) {
       const { student, schoolClass, pin } = await joinClass(deps, body);
-      await startSession(deps, http.req, 'student', student.id);
+      await startSession(deps, http.req, { kind: 'student', student });
       return { me: presentStudent(student, schoolClass), pin };
     },
   }),
@@ -59,17 +58,11 @@ export const doorRoutes = [
     summary: 'Come back to a bench with the PIN',
     body: ReturnRequest,
     answer: MeAnswer,
-    limitTries: { account: ({ code, bench, nickname }) => `${code} ${bench} ${nicknameKey(nickname)}` },
+    limitTries: { account: pinAccount, fromAnywhere: true },
     async handler({ deps, body, http }) {
       const found = await checkPin(deps, body);
-      if (!found) {
-        throw new AppError(
-          401,
-          'pin_not_matched',
-          'Bench, nickname and PIN do not belong together. Check all three; the teacher can give a new PIN.',
-        );
-      }
-      await startSession(deps, http.req, 'student', found.student.id);
+      if (!found) throw pinNotMatched();
+      await startSession(deps, http.req, { kind: 'student', student: found.student });
       return { me: presentStudent(found.student, found.schoolClass) };
     },
   }),
@@ -91,14 +84,8 @@ export const doorRoutes = [
     limitTries: { account: ({ email }) => email },
     async handler({ deps, body, http }) {
       const account = await checkPassword(deps, body.email, body.password);
-      if (!account) {
-        throw new AppError(
-          401,
-          'password_not_matched',
-          'E-mail address and password do not belong together. Check both, or ask for a new password.',
-        );
-      }
-      await startSession(deps, http.req, 'staff', account.id);
+      if (!account) throw passwordNotMatched();
+      await startSession(deps, http.req, { kind: 'staff', account });
       return { me: presentStaff(account) };
     },
   }),
@@ -123,7 +110,7 @@ export const doorRoutes = [
     limitTries: {},
     async handler({ deps, body, http }) {
       const account = await setUpFirstCoordinator(deps, body);
-      await startSession(deps, http.req, 'staff', account.id);
+      await startSession(deps, http.req, { kind: 'staff', account });
       return { me: presentStaff(account) };
     },
   }),
@@ -137,7 +124,7 @@ export const doorRoutes = [
     limitTries: {},
     async handler({ deps, body, http }) {
       const account = await acceptInvite(deps, body);
-      await startSession(deps, http.req, 'staff', account.id);
+      await startSession(deps, http.req, { kind: 'staff', account });
       return { me: presentStaff(account) };
     },
   }),

@@ -6,6 +6,9 @@ import type { Route } from './route';
 import { runRoutes } from './runRoutes';
 import { describeRoute, healthRoute } from './serverRoutes';
 
+/** Made when first asked for: it is the same for as long as the process runs. */
+let description: object | undefined;
+
 /** Every route of the API: the registrar, the API description and the permission tests read this list. */
 export const routes: readonly Route[] = [
   ...doorRoutes,
@@ -13,5 +16,5 @@ export const routes: readonly Route[] = [
   ...classRoutes,
   ...runRoutes,
   healthRoute,
-  describeRoute((version) => describeApi(routes, version)),
+  describeRoute((version) => (description ??= describeApi(routes, version))),
 ];

@@ -17,9 +17,11 @@ export interface Call<Params, Query, Body> {
   http: { req: Request; res: Response };
 }
 
-/** Tries that failed are counted, by address and, where one is named, by account. */
+/** Tries that failed are counted: where an account is named by that account, else by address. */
 export interface TryLimit<Body> {
   account?: (body: Body) => string;
+  /** The few tries are the account's, wherever they come from: for a PIN, which has only a million values. */
+  fromAnywhere?: true;
 }
 
 export interface RouteSpec<Params, Query, Body, Answer> {

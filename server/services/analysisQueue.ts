@@ -10,11 +10,10 @@ import { storeAnalyses, type Computed } from './storeAnalyses';
 
 /** Computes analyses of record away from the requests that ask for them, one run at a time. */
 export interface AnalysisQueue {
-  add(runIds: readonly string[]): void;
   /** Analyses in force of those runs, waiting at most that long; runs that are not done by then are left out. */
   ready(runIds: readonly string[], withinMs: number): Promise<Analysis[]>;
-  /** Queues every run without an analysis of its present edits by the present method. */
-  addMissing(): Promise<number>;
+  /** Queues those of the runs, or of all, that have no analysis of their present edits by the present method. */
+  addMissing(among?: readonly string[]): Promise<number>;
   /** Resolves when nothing is left to do. */
   settled(): Promise<void>;
   /** Ends after the batch in work; what is left is found again by addMissing. */
@@ -72,11 +71,7 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
     for (const tell of told) tell();
   }
 
-  const queue: AnalysisQueue = {
-    add(runIds) {
-      for (const id of runIds) waiting.add(id);
-      if (waiting.size > 0 && !stopped) worker ??= work();
-    },
+  return {
     async ready(runIds, withinMs) {
       const deadline = performance.now() + withinMs;
       while (!isDone(runIds) && !stopped && waiting.size <= MOST_AHEAD && performance.now() < deadline) {
@@ -94,16 +89,18 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
       );
       return rows.map(({ body }) => JSON.parse(body) as Analysis);
     },
-    async addMissing() {
+    async addMissing(among) {
       const rows = await database.select<{ id: string }>(
         `SELECT r.id FROM runs r
            LEFT JOIN current_analyses c ON c.run_id = r.id
            LEFT JOIN analyses a ON a.seq = c.analysis_seq
-         WHERE a.seq IS NULL OR a.method <> $1
-           OR c.edit_seq < (SELECT max(e.seq) FROM edits e WHERE e.run_id = r.id)`,
-        [METHOD.id],
+         WHERE (a.seq IS NULL OR a.method <> $1
+             OR c.edit_seq < (SELECT max(e.seq) FROM edits e WHERE e.run_id = r.id))
+           ${among ? 'AND r.id IN (SELECT value FROM json_each($2))' : ''}`,
+        [METHOD.id, ...(among ? [JSON.stringify(among)] : [])],
       );
-      queue.add(rows.map(({ id }) => id));
+      for (const { id } of rows) waiting.add(id);
+      if (waiting.size > 0 && !stopped) worker ??= work();
       return rows.length;
     },
     async settled() {
@@ -115,7 +112,6 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
       await worker;
     },
   };
-  return queue;
 }
 
 export interface Inputs {

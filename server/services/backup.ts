@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { existsSync } from 'node:fs';
-import { copyFile, mkdir, open, rename, rm } from 'node:fs/promises';
+import { chmod, copyFile, mkdir, open, rename, rm } from 'node:fs/promises';
 import { dirname, join } from 'node:path';
 import sqlite3 from 'sqlite3';
 import { ConfigError } from '../config';
@@ -24,36 +24,49 @@ export async function backupDatabase(dataDir: string, file: string): Promise<voi
 }
 
 /**
- * Puts a backup in the place of the database and keeps what was there. The restored one gets a new
- * epoch: by it the phones see that the server's memory went back, and hand in again what it lacks.
+ * Puts a backup in the place of the database and keeps what was there, damaged or not, unopened. The
+ * restored one gets a new epoch: by it the phones see that the server's memory went back, and hand in
+ * again what it lacks. Nobody is signed in on it and no link works: a sign-in or link that was ended
+ * after the backup would otherwise be good again.
  *
  * @throws {ConfigError} when a server is running on the folder, or the file is no Swaymark backup
  */
 export async function restoreDatabase(dataDir: string, file: string): Promise<{ keptAs: string | null }> {
   await mkdir(dataDir, { recursive: true, mode: 0o700 });
   const unlock = await lockDataDir(dataDir);
+  const target = join(dataDir, DATABASE_FILE);
+  const part = `${target}.part`;
   try {
     await mustBeWhole(file);
-    const target = join(dataDir, DATABASE_FILE);
-    const part = `${target}.part`;
     await copyFile(file, part);
-    await using(part, async (database) => {
-      await all(database, `INSERT OR REPLACE INTO server_meta (key, content) VALUES ('epoch', ?)`, [randomUUID()]);
-    });
+    await using(part, beginNewLife);
+    await chmod(part, 0o600);
     await forceToDisk(part);
     const keptAs = existsSync(target) ? `${target}.before-restore-${Date.now()}` : null;
-    if (keptAs) {
-      // Opening and closing alone brings what is still in the -wal file into the database.
-      await using(target, (database) => all(database, 'PRAGMA wal_checkpoint(TRUNCATE)', []));
-      await rename(target, keptAs);
+    // A journal is part of the database it lies beside, and belongs to it under its new name too.
+    for (const end of DATABASE_ENDS) {
+      if (keptAs && existsSync(target + end)) await rename(target + end, keptAs + end);
+      else await rm(target + end, { force: true });
     }
-    await Promise.all(['-wal', '-shm'].map((end) => rm(`${target}${end}`, { force: true })));
     await rename(part, target);
     await forceToDisk(dataDir);
     return { keptAs };
   } finally {
+    for (const end of DATABASE_ENDS) await rm(part + end, { force: true });
     await unlock();
   }
+}
+
+/** SQLite keeps a database in WAL mode in up to three files. */
+const DATABASE_ENDS = ['', '-wal', '-shm'];
+
+async function beginNewLife(database: sqlite3.Database): Promise<void> {
+  const now = Date.now();
+  await all(database, 'BEGIN IMMEDIATE', []);
+  await all(database, `INSERT OR REPLACE INTO server_meta (key, content) VALUES ('epoch', ?)`, [randomUUID()]);
+  await all(database, 'UPDATE sign_ins SET revoked_ms = ? WHERE revoked_ms IS NULL', [now]);
+  await all(database, 'UPDATE staff_tokens SET used_ms = ? WHERE used_ms IS NULL', [now]);
+  await all(database, 'COMMIT', []);
 }
 
 async function mustBeWhole(file: string): Promise<void> {

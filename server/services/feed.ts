@@ -21,7 +21,8 @@ const MOST_FEED_BYTES = 2_000_000;
 type Place = Pick<FeedRow, 'seq' | 'kind' | 'ref_seq' | 'bytes'>;
 
 /**
- * What has happened since the cursor, in the server's order, of what this actor may hear of. The
+ * What has happened since the cursor, in the server's order, of what this actor may hear of. Of a run's
+ * analyses only the one in force is told: another comes later in the feed. The
  * cursor moves on to the last place that was looked at, heard or not, and everything up to there was
  * visible when it was read, so none is skipped.
  */
@@ -49,10 +50,15 @@ export async function feedAfter(
 function placesInScope(deps: Deps, actor: SignedIn, scope: Scope, from: number, top: number, most: number) {
   const [where, ...bind] = inScope(actor, scope);
   return deps.database.select<Place>(
-    `SELECT seq, kind, ref_seq, bytes FROM feed WHERE seq > $1 AND seq <= $2 AND ${where} ORDER BY seq LIMIT $3`,
+    `SELECT seq, kind, ref_seq, bytes FROM feed WHERE seq > $1 AND seq <= $2 AND ${where} AND ${IS_IN_FORCE}
+     ORDER BY seq LIMIT $3`,
     [from, top, most, ...bind],
   );
 }
+
+/** Runs and edits always are. */
+const IS_IN_FORCE = `(kind <> 'analysis' OR seq =
+  (SELECT c.feed_seq FROM analyses a JOIN current_analyses c ON c.run_id = a.run_id WHERE a.seq = ref_seq))`;
 
 /** The condition for `feed` rows, and its bound values from $4 on. */
 function inScope(actor: SignedIn, scope: Scope): [string, ...(string | number)[]] {
@@ -86,9 +92,15 @@ async function itemsAt(deps: Deps, actor: SignedIn, places: Place[]): Promise<Fe
     edit: new Map(edits.map((row) => [row.seq, row])),
     analysis: new Map(analyses.map((row) => [row.seq, row])),
   };
-  return places.map(({ seq, kind, ref_seq }) => {
-    if (kind === 'run') return presentRunItem(bySeq.run.get(ref_seq)!, author);
-    if (kind === 'edit') return presentEditItem(bySeq.edit.get(ref_seq)!, author);
-    return presentAnalysisItem(seq, bySeq.analysis.get(ref_seq)!.body);
+  return places.flatMap(({ seq, kind, ref_seq }) => {
+    try {
+      if (kind === 'run') return presentRunItem(bySeq.run.get(ref_seq)!, author);
+      if (kind === 'edit') return presentEditItem(bySeq.edit.get(ref_seq)!, author);
+      return presentAnalysisItem(seq, bySeq.analysis.get(ref_seq)!.body);
+    } catch (error) {
+      // One damaged row must not hold up all that comes after it.
+      deps.log.error({ err: error, kind, seq: ref_seq }, 'a row of the feed could not be read');
+      return [];
+    }
   });
 }

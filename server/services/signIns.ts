@@ -1,7 +1,10 @@
 import { randomUUID } from 'node:crypto';
 import { Op, type Transaction } from 'sequelize';
 import type { Deps } from '../deps';
+import { AppError } from '../errors';
 import type { SignIn } from '../models/SignIn';
+import type { StaffAccount } from '../models/StaffAccount';
+import type { Student } from '../models/Student';
 import type { SignedIn } from '../policies/actor';
 
 const DAY_MS = 86_400_000;
@@ -18,17 +21,41 @@ export const SIGN_IN_LIMITS = {
 /** `last_seen_ms` is only as exact as the idle limit needs: not every request should write. */
 const SEEN_STEP_MS = 3_600_000;
 
-export async function createSignIn(deps: Deps, actorKind: SignIn['actor_kind'], actorId: string): Promise<string> {
+/** Who proved to be themselves, as their row was when they did. */
+export type Proven = { kind: 'staff'; account: StaffAccount } | { kind: 'student'; student: Student };
+
+/**
+ * A new sign-in. Between the proof and here others may have written, because hashing takes its turn:
+ * it is made only if the password or PIN is still the one that was proven, and the account is open.
+ */
+export async function createSignIn(deps: Deps, proven: Proven): Promise<string> {
   const id = randomUUID();
   const at = deps.now();
-  await deps.database.writeTransaction((transaction) =>
-    deps.database.models.SignIn.create(
-      { id, actor_kind: actorKind, actor_id: actorId, created_ms: at, last_seen_ms: at },
+  await deps.database.writeTransaction(async (transaction) => {
+    if (proven.kind === 'staff') await refuseChangedAccount(deps, proven.account, transaction);
+    else await refuseChangedStudent(deps, proven.student, transaction);
+    const actor_id = proven.kind === 'staff' ? proven.account.id : proven.student.id;
+    await deps.database.models.SignIn.create(
+      { id, actor_kind: proven.kind, actor_id, created_ms: at, last_seen_ms: at },
       { transaction },
-    ),
-  );
+    );
+  });
   return id;
 }
+
+export const passwordNotMatched = () =>
+  new AppError(
+    401,
+    'password_not_matched',
+    'E-mail address and password do not belong together. Check both, or ask for a new password.',
+  );
+
+export const pinNotMatched = () =>
+  new AppError(
+    401,
+    'pin_not_matched',
+    'Class code, bench, nickname and PIN do not belong together. Check all four; the teacher can give a new PIN.',
+  );
 
 /** The person behind a sign-in that is still good, read anew each time; undefined otherwise. */
 export async function actorOf(deps: Deps, signInId: string): Promise<SignedIn | undefined> {
@@ -60,6 +87,16 @@ export async function revokeAllSignIns(
     { revoked_ms: now() },
     { where: { actor_id: actorId, revoked_ms: { [Op.is]: null } }, transaction },
   );
+}
+
+async function refuseChangedAccount({ database }: Deps, proven: StaffAccount, transaction: Transaction) {
+  const now = await database.models.StaffAccount.findByPk(proven.id, { transaction });
+  if (now?.password_hash !== proven.password_hash || now.disabled_ms !== null) throw passwordNotMatched();
+}
+
+async function refuseChangedStudent({ database }: Deps, proven: Student, transaction: Transaction) {
+  const now = await database.models.Student.findByPk(proven.id, { transaction });
+  if (now?.pin_hash !== proven.pin_hash) throw pinNotMatched();
 }
 
 async function studentOf({ database }: Deps, signIn: SignIn): Promise<SignedIn | undefined> {

@@ -53,10 +53,18 @@ export async function checkPassword(deps: Deps, email: string, password: string)
   const { matches, stale } = await deps.hasher.verify(account?.password_hash ?? null, password);
   if (!account || !matches || account.disabled_ms !== null) return undefined;
   if (stale) {
-    const fresh = await deps.hasher.hash(password);
-    await deps.database.writeTransaction((transaction) => account.update({ password_hash: fresh }, { transaction }));
+    await replaceHash(deps, account, await deps.hasher.hash(password));
   }
   return account;
+}
+
+/** Puts the same password's newer hash in place of the one that was verified, and of no other. */
+async function replaceHash({ database }: Deps, account: StaffAccount, fresh: string): Promise<void> {
+  const { id, password_hash } = account;
+  const [replaced] = await database.writeTransaction((transaction) =>
+    database.models.StaffAccount.update({ password_hash: fresh }, { where: { id, password_hash }, transaction }),
+  );
+  if (replaced === 1) account.password_hash = fresh;
 }
 
 /** Mails a reset link when the account exists. Called after the answer went out, so its length tells nothing. */

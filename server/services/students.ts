@@ -66,24 +66,31 @@ export async function joinClass(
   return { student, schoolClass, pin };
 }
 
-/** The student who has this PIN, or undefined after as long a wait when there is no such nickname. */
+/** The student who has this PIN, or undefined after as long a wait when there is no such class or nickname. */
 export async function checkPin(
   deps: Deps,
   said: { code: string; bench: number; nickname: string; pin: string },
 ): Promise<{ student: Student; schoolClass: SchoolClass } | undefined> {
-  const schoolClass = await findClassByCode(deps, said.code);
-  const student = await deps.database.models.Student.findOne({
-    where: { class_id: schoolClass.id, bench: said.bench, nickname_key: nicknameKey(said.nickname) },
-  });
+  const { SchoolClass, Student } = deps.database.models;
+  const schoolClass = await SchoolClass.findOne({ where: { code: said.code } });
+  const student =
+    schoolClass &&
+    (await Student.findOne({
+      where: { class_id: schoolClass.id, bench: said.bench, nickname_key: nicknameKey(said.nickname) },
+    }));
   const { matches } = await deps.hasher.verify(student?.pin_hash ?? null, said.pin);
   return student && matches ? { student, schoolClass } : undefined;
 }
 
-/** A new PIN for a student who lost the old one. Devices signed in with the old one are signed out. */
+/** What wrong PINs are counted by. */
+export const pinAccount = ({ code, bench, nickname }: { code: string; bench: number; nickname: string }) =>
+  `${code} ${bench} ${nicknameKey(nickname)}`;
+
+/** A new PIN for a student who lost the old one, good at once. Devices signed in with the old one are signed out. */
 export async function renewPin(deps: Deps, actor: Actor, scope: Scope, studentId: string): Promise<string> {
   const student = await deps.database.models.Student.findByPk(studentId);
   if (!student) throw notFound('This student');
-  await classInScope(deps, actor, scope, student.class_id, 'This student');
+  const { code } = await classInScope(deps, actor, scope, student.class_id, 'This student');
   const pin = newPin();
   const pinHash = await deps.hasher.hash(pin);
   await deps.database.writeTransaction(async (transaction) => {
@@ -91,5 +98,6 @@ export async function renewPin(deps: Deps, actor: Actor, scope: Scope, studentId
     await revokeAllSignIns(deps, student.id, transaction);
     await noteActivity(deps, actor, 'student.new_pin', student.id, transaction);
   });
+  deps.tries.byAccount.forget(pinAccount({ code, bench: student.bench, nickname: student.nickname }));
   return pin;
 }

@@ -4,7 +4,7 @@ import type { RawEdit } from '../schemas/edit';
 import type { RawRun } from '../schemas/run';
 import { gravityFrom } from '../physics/gravity';
 import { reducedLength } from '../physics/reducedLength';
-import { foldRun } from '../timing/foldRun';
+import { foldRun, inForce } from '../timing/foldRun';
 import type { RunView } from '../timing/runView';
 import { degrees } from '../units/angle';
 import { findFlags } from './findFlags';
@@ -46,9 +46,7 @@ export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<
   const gravity = smallPeriod && length ? gravityOf(fit.smallPeriod!, length) : null;
   return {
     run_id: run.content.id,
-    input_digest: digestOf(
-      canonicalText({ run: run.digest, edits: edits.map((edit) => edit.digest), method: METHOD.id }),
-    ),
+    input_digest: inputDigest(run, edits),
     method: METHOD.id,
     swings: view.swings,
     marks_used: view.marks.filter((mark) => !mark.leftOut).length,
@@ -66,6 +64,16 @@ export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<
     marks: markRows(view, fit),
     missing: [...fit.missing, ...(length === null ? (['length'] as const) : [])],
   };
+}
+
+/**
+ * Over what the analysis was computed from and nothing else: a note, or an edit that was made and
+ * withdrawn again, changes no figure, so it makes no other analysis.
+ */
+function inputDigest(run: Sealed<RawRun>, edits: Sealed<RawEdit>[]): string {
+  const counting = new Set(inForce(edits.map(({ content }) => content)).filter(({ change }) => change.kind !== 'note'));
+  const digests = edits.filter(({ content }) => counting.has(content)).map(({ digest }) => digest);
+  return digestOf(canonicalText({ run: run.digest, edits: digests, method: METHOD.id }));
 }
 
 function stated(estimate: Estimate | null) {

@@ -73,6 +73,8 @@ const NOTHING: Fit = {
 };
 /** The amplitudes from a gate need T0, and T0 needs them; each turn brings the factor A²/8 or less. */
 const GATE_TURNS = 8;
+/** Relative change of T0 below which another turn says nothing. */
+const GATE_SETTLED = 1e-12;
 
 /** Swings of the marks in force, and the line through them against any column as long. */
 interface Line {
@@ -124,7 +126,9 @@ function correctForAmplitude(view: RunView, line: Line) {
     const next = withPoints(blockAmplitudes(view, smallPeriod, (found?.corrected ?? plain).offset));
     if (!next) break;
     found = next;
+    const isSettled = Math.abs(next.corrected.slope - smallPeriod) <= GATE_SETTLED * smallPeriod;
     smallPeriod = next.corrected.slope;
+    if (isSettled) break;
   }
   if (found) return { ...found, amplitudes: withFlagWidth(view, found.amplitudes) };
   return withPoints(readAmplitudes(view.amplitudes));

@@ -33,14 +33,22 @@ const SMALLEST_AMPLITUDE = 1e-6;
  * @returns      rad, in [0, 179.5°]
  * @example amplitudeAt({ from: 0, to: 20, first: 0.4, last: 0.1, law: 0 }, 10) // 0.2
  */
-export function amplitudeAt({ from, to, first, last, law }: AmplitudeCurve, swing: number): number {
-  if (to === from) return clamp(first);
-  const share = (swing - from) / (to - from);
+export function amplitudeAt(curve: AmplitudeCurve, swing: number): number {
+  return amplitudeAlong(curve)(swing);
+}
+
+/** `amplitudeAt` for many swings on one curve: what they share is computed once. */
+export function amplitudeAlong({ from, to, first, last, law }: AmplitudeCurve): (swing: number) => number {
+  if (to === from) return () => clamp(first);
   const ratio = last / first;
-  if (Math.abs(law) < 1e-8) return clamp(first * pow(ratio, share));
-  const power = 1 + (pow(ratio, law) - 1) * share;
-  if (power <= 0) return law > 0 ? 0 : LARGEST_AMPLITUDE;
-  return clamp(first * pow(power, 1 / law));
+  const share = (swing: number) => (swing - from) / (to - from);
+  if (Math.abs(law) < 1e-8) return (swing) => clamp(first * pow(ratio, share(swing)));
+  const change = pow(ratio, law) - 1;
+  return (swing) => {
+    const power = 1 + change * share(swing);
+    if (power <= 0) return law > 0 ? 0 : LARGEST_AMPLITUDE;
+    return clamp(first * pow(power, 1 / law));
+  };
 }
 
 function clamp(amplitude: number): number {

@@ -1,6 +1,6 @@
 import { cholesky } from '../statistics/invert';
 import { leastSquares } from '../statistics/leastSquares';
-import { amplitudeAt, type AmplitudeCurve, type AmplitudePoint } from './amplitudeCurve';
+import { amplitudeAlong, type AmplitudeCurve, type AmplitudePoint } from './amplitudeCurve';
 import { exp } from './elementary';
 
 /** A one-standard-uncertainty change of the curve, both ways, independent of the others. */
@@ -50,8 +50,8 @@ export function fitAmplitudes(readings: AmplitudePoint[]): AmplitudeFit | undefi
   const fit = leastSquares(
     (unknowns) => {
       const [law, first, last] = unknowns as [number, number, number];
-      const curve = { from, to, law, first, last };
-      return [...points.map((p) => (amplitudeAt(curve, p.swing) - p.amplitude) / p.u), unknowns[0]! / LAW_U];
+      const amplitude = amplitudeAlong({ from, to, law, first, last });
+      return [...points.map((p) => (amplitude(p.swing) - p.amplitude) / p.u), unknowns[0]! / LAW_U];
     },
     [0, points[0]!.amplitude, points.at(-1)!.amplitude],
     ([law, first, last]) => [Math.min(Math.max(law!, -1), 1), Math.max(first!, 1e-5), Math.max(last!, 1e-5)],

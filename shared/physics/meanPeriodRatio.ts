@@ -1,4 +1,4 @@
-import { amplitudeAt, type AmplitudeCurve } from './amplitudeCurve';
+import { amplitudeAlong, type AmplitudeCurve } from './amplitudeCurve';
 import { periodRatio } from './periodRatio';
 
 /** Nodes and weights of the three-point Gauss rule on [0, 1]. */
@@ -19,9 +19,10 @@ const MOST_CELLS = 16;
  * @example smallPeriodsElapsed(constantCurve(Math.PI / 2), [0, 10]) // [0, 11.8034]
  */
 export function smallPeriodsElapsed(curve: AmplitudeCurve, swings: number[]): number[] {
+  const amplitude = amplitudeAlong(curve);
   let sum = 0;
   return swings.map((swing, i) => {
-    if (i > 0) sum += integral(curve, swings[i - 1]!, swing);
+    if (i > 0) sum += integral(amplitude, swings[i - 1]!, swing);
     return sum;
   });
 }
@@ -36,16 +37,16 @@ export function smallPeriodsElapsed(curve: AmplitudeCurve, swings: number[]): nu
  * @example meanPeriodRatio({ from: 0, to: 30, first: radians(20), last: radians(12), law: 0 }, 0, 30) // 1.00479
  */
 export function meanPeriodRatio(curve: AmplitudeCurve, from: number, to: number): number {
-  return integral(curve, from, to) / (to - from);
+  return integral(amplitudeAlong(curve), from, to) / (to - from);
 }
 
-function integral(curve: AmplitudeCurve, from: number, to: number): number {
+function integral(amplitude: (swing: number) => number, from: number, to: number): number {
   const cells = Math.min(Math.max(Math.ceil(to - from), 1), MOST_CELLS);
   const width = (to - from) / cells;
   let sum = 0;
   for (let cell = 0; cell < cells; cell += 1) {
     for (const [node, weight] of GAUSS) {
-      sum += weight * periodRatio(amplitudeAt(curve, from + (cell + node) * width));
+      sum += weight * periodRatio(amplitude(from + (cell + node) * width));
     }
   }
   return sum * width;

@@ -3,7 +3,8 @@ import { MAX_BENCH, MAX_NOTE, MAX_RUN_US } from './limits';
 
 /** Building blocks of every format. Objects are strict everywhere: an unknown field is refused. */
 
-export const Uuid = z.uuid();
+/** In lower case, so that one id has one spelling. */
+export const Uuid = z.uuid().lowercase('ids are written in lower case');
 export const Digest = z.string().regex(/^[0-9a-f]{64}$/, 'a SHA-256 digest has 64 hexadecimal digits');
 /** Milliseconds since 1970, as the device's wall clock said. A fact about the device, never an order. */
 export const WallMs = z.int().min(0).max(8_640_000_000_000_000);

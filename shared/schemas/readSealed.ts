@@ -14,7 +14,7 @@ export class FormatError extends Error {
   constructor(
     readonly code: FormatCode,
     message: string,
-    /** For code `fields`: where, and what is wanted there. */
+    /** For code `fields`: where, and what is wanted there; the first twenty. */
     readonly fields: { path: string; message: string }[] = [],
   ) {
     super(message);
@@ -37,6 +37,9 @@ export function readRun(rawText: string, digest: string): RawRun {
 export function readEdit(rawText: string, digest: string): RawEdit {
   return read(rawText, digest, { what: 'edit', schema: RawEdit, format: EDIT_FORMAT, version: EDIT_VERSION });
 }
+
+/** More than this help nobody. */
+const MOST_FIELDS = 20;
 
 interface Wanted<T> {
   what: 'run' | 'edit';
@@ -71,7 +74,9 @@ function read<T>(rawText: string, digest: string, { what, schema, format, versio
   }
   const checked = schema.safeParse(content, { error: plainMessage });
   if (!checked.success) {
-    const fields = checked.error.issues.map((issue) => ({ path: issue.path.join('.'), message: issue.message }));
+    const fields = checked.error.issues
+      .slice(0, MOST_FIELDS)
+      .map((issue) => ({ path: issue.path.join('.'), message: issue.message }));
     throw new FormatError('fields', `Some fields of this ${what} are not as its format says: see fields.`, fields);
   }
   // Compared after the schema, so that a text the schema would tidy up (spaces around a note) is refused too.
@@ -100,15 +105,18 @@ function parse(rawText: string, what: string): Record<string, unknown> {
   return content as Record<string, unknown>;
 }
 
-/** A lone surrogate has no UTF-8 text; such a text is no canonical form of anything. */
+/** A lone surrogate has no UTF-8 text; with one in it a text is no canonical form of anything (RFC 8785, 3.2.2.2). */
 function canonicalOf(content: unknown): string | undefined {
   try {
-    return canonicalText(content);
+    const text = canonicalText(content);
+    // Canonical text spells out nothing but control signs and lone surrogates; an escaped backslash is not such a spelling.
+    return text.replaceAll('\\\\', '').includes('\\ud') ? undefined : text;
   } catch {
     return undefined;
   }
 }
 
+/** Only plain content: anything else may have a text of any length, or none. */
 function shown(content: unknown): string {
-  return String(content).slice(0, 40);
+  return typeof content === 'string' || typeof content === 'number' ? String(content).slice(0, 40) : typeof content;
 }

@@ -36,9 +36,8 @@ export function fitLine(x: number[], y: number[], isOdd?: boolean[]): LineFit | 
   const slopeWeights = along.map((q) => q / rise);
   const slope = dot(slopeWeights, y);
   const flat = y.map((value, i) => value - slope * x[i]!);
-  const mean = (which: (i: number) => boolean) => average(flat.filter((_, i) => which(i)));
-  const intercept = isOdd ? mean((i) => !isOdd[i]) : mean(() => true);
-  const offset = isOdd ? mean((i) => isOdd[i]!) - intercept : 0;
+  const intercept = average(isOdd ? flat.filter((_, i) => !isOdd[i]) : flat);
+  const offset = isOdd ? average(flat.filter((_, i) => isOdd[i])) - intercept : 0;
   const residuals = flat.map((value, i) => value - intercept - (isOdd?.[i] ? offset : 0));
   return { slope, intercept, offset, residuals, slopeWeights, basis };
 }

@@ -20,6 +20,12 @@ export const newClassCode = (id: string) =>
 export const newBoardPass = (id: string) =>
   request(`/classes/${id}/new-board-pass`, { method: 'POST', body: {}, answer: classAnswer });
 
+export const removeStudent = (studentId: string) =>
+  request(`/students/${studentId}`, {
+    method: 'DELETE',
+    answer: () => schemas().then((module) => module.DoneAnswer),
+  });
+
 export const newStudentPin = (studentId: string) =>
   request(`/students/${studentId}/new-pin`, {
     method: 'POST',

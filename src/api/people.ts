@@ -19,3 +19,10 @@ export const disablePerson = (id: string) =>
 
 export const enablePerson = (id: string) =>
   request(`/people/${id}/enable`, { method: 'POST', body: {}, answer: doneAnswer });
+
+export const resetLink = (id: string) =>
+  request(`/people/${id}/reset-link`, {
+    method: 'POST',
+    body: {},
+    answer: () => schemas().then((module) => module.ResetLinkAnswer),
+  });

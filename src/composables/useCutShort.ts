@@ -24,10 +24,15 @@ export function useCutShort() {
     await session.ready;
     const { store } = session;
     if (!store || isGone || (await isRecording())) return;
-    const open = await openRecordings(store);
-    const [kept, empty] = [open.filter(hasMark), open.filter((recording) => !hasMark(recording))];
-    await Promise.all(empty.map(({ id }) => discardRecording(store, id)));
-    cutShort.value = kept;
+    try {
+      const open = await openRecordings(store);
+      const [kept, empty] = [open.filter(hasMark), open.filter((recording) => !hasMark(recording))];
+      await Promise.all(empty.map(({ id }) => discardRecording(store, id)));
+      if (store === session.store) cutShort.value = kept;
+    } catch (cause) {
+      // A change of account closes the store that is being read; the next one is looked into as it opens.
+      if (store.isOpen()) throw cause;
+    }
   }
 
   /** @returns the id of the run it became */
@@ -56,7 +61,15 @@ export function useCutShort() {
     cutShort.value = cutShort.value.filter((recording) => recording.id !== id);
   }
 
-  watch(() => session.store, look, { immediate: true });
+  watch(
+    () => session.store,
+    () => {
+      cutShort.value = [];
+      discarded.value = null;
+      return look();
+    },
+    { immediate: true },
+  );
   return { cutShort, discarded, keep, discard, bringBack, look };
 }
 

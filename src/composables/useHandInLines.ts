@@ -22,6 +22,8 @@ export function useHandInLines() {
     refused: computed(() => standing('refused').sort(byMade)),
     waiting: computed(() => standing('waiting').sort(byMade)),
     received: computed(() => standing('received').sort((a, b) => byMade(b, a))),
+    /** Made on this device too, wherever they stand. */
+    unreadable: computed(() => runs.unreadable.filter(({ row }) => row.origin === 'mine')),
   };
 }
 

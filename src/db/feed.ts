@@ -1,4 +1,5 @@
 import type { Analysis } from '@shared/schemas/analysis';
+import { digestOf } from '@shared/schemas/canonical';
 import type { FeedAnswer, FeedItem } from '@shared/schemas/sync';
 import type { EditRow, LocalStore, RunRow, SendInfo } from './localStore';
 import { readMeta, writeMeta } from './meta';
@@ -10,7 +11,8 @@ export async function feedCursor(store: LocalStore): Promise<number> {
 }
 
 /**
- * Writes a page of the feed and its cursor down, in one transaction.
+ * Writes a page of the feed and its cursor down, in one transaction. An item whose text is damaged, or not
+ * its own, is passed over; a text kept here is never replaced.
  *
  * @returns true when the server's epoch changed: everything made here waits again, and the feed starts over
  */
@@ -66,14 +68,15 @@ async function applyItem(store: LocalStore, item: FeedItem): Promise<void> {
 }
 
 async function applyRun(store: LocalStore, item: Extract<FeedItem, { type: 'run' }>): Promise<void> {
+  const content = sealedContent(item);
   const kept = await store.runs.get(item.id);
-  if (kept && kept.digest !== item.digest) return;
+  if (!content || (kept && kept.digest !== item.digest)) return;
   const row: RunRow = {
     ...fromServer(item, kept),
     id: item.id,
     class_id: item.class_id,
     bench: item.bench,
-    made_wall_ms: kept?.made_wall_ms ?? madeWallMs(item.raw),
+    made_wall_ms: kept?.made_wall_ms ?? content.made?.wall_ms ?? item.receipt.received_wall_ms,
     clock_skew_ms: item.clock_skew_ms,
   };
   await store.runs.put(row);
@@ -81,13 +84,13 @@ async function applyRun(store: LocalStore, item: Extract<FeedItem, { type: 'run'
 
 async function applyEdit(store: LocalStore, item: Extract<FeedItem, { type: 'edit' }>): Promise<void> {
   const kept = await store.edits.get(item.id);
-  if (kept && kept.digest !== item.digest) return;
-  const row: EditRow = { ...fromServer(item, kept), id: item.id, run_id: item.run_id };
+  if (!sealedContent(item) || (kept && kept.digest !== item.digest)) return;
+  const row: EditRow = { ...fromServer(item, kept), id: item.id, run_id: kept?.run_id ?? item.run_id };
   await store.edits.put(row);
 }
 
 type Sent = Exclude<FeedItem, { type: 'analysis' }>;
-const fromServer = (item: Sent, kept: SendInfo | undefined): SendInfo & { digest: string; raw: string } => ({
+const fromServer = (item: Sent, kept: RunRow | EditRow | undefined): SendInfo & Pick<RunRow, 'digest' | 'raw'> => ({
   state: 'received',
   created_seq: kept?.created_seq ?? 0,
   receipt: item.receipt,
@@ -95,7 +98,16 @@ const fromServer = (item: Sent, kept: SendInfo | undefined): SendInfo & { digest
   author: item.author,
   origin: kept?.origin ?? 'feed',
   digest: item.digest,
-  raw: item.raw,
+  raw: kept?.raw ?? item.raw,
 });
 
-const madeWallMs = (raw: string): number => (JSON.parse(raw) as { made: { wall_ms: number } }).made.wall_ms;
+/** What the item's text says, as far as it is looked at here; null when its bytes are not those sealed under its id. */
+function sealedContent(item: Sent): { id: string; made?: { wall_ms?: number } } | null {
+  if (digestOf(item.raw) !== item.digest) return null;
+  try {
+    const content = JSON.parse(item.raw) as { id: string; made?: { wall_ms?: number } } | null;
+    return content?.id === item.id ? content : null;
+  } catch {
+    return null;
+  }
+}

@@ -67,6 +67,18 @@ export async function park(
     .modify({ state: 'refused', refusal });
 }
 
+/** An edit of a run the server will not take would wait for ever: it is set aside with its run's reason. */
+export function parkEditsOfRefusedRuns(store: LocalStore): Promise<void> {
+  return store.transaction('rw', store.runs, store.edits, async () => {
+    const refused = await store.runs.where({ state: 'refused' }).toArray();
+    for (const { id, refusal } of refused)
+      await store.edits
+        .where({ run_id: id })
+        .filter((edit) => edit.state === 'waiting')
+        .modify({ state: 'refused', refusal });
+  });
+}
+
 /** True while a run made here was received and the server's analysis of it has not come yet. */
 export async function awaitsAnalysis(store: LocalStore): Promise<boolean> {
   const received = await store.runs
@@ -77,12 +89,16 @@ export async function awaitsAnalysis(store: LocalStore): Promise<boolean> {
   return received.some((id) => !analysed.has(id));
 }
 
-/** Puts a refused item back in the queue, for a try by hand. */
-export async function sendOnceMore(store: LocalStore, type: 'run' | 'edit', id: string): Promise<void> {
-  await tableOf(store, type)
-    .where({ id })
-    .filter((row) => row.state === 'refused')
-    .modify({ state: 'waiting', refusal: null });
+/** Puts a refused item back in the queue, for a try by hand; a run with its edits, an edit with its refused run. */
+export function sendOnceMore(store: LocalStore, type: 'run' | 'edit', id: string): Promise<void> {
+  const isRefused = (row: SendInfo) => row.state === 'refused';
+  const again = { state: 'waiting', refusal: null } as const;
+  return store.transaction('rw', store.runs, store.edits, async () => {
+    const runId = type === 'run' ? id : (await store.edits.get(id))?.run_id;
+    const runs = await store.runs.where({ id: runId }).filter(isRefused).modify(again);
+    const edits = runs > 0 ? store.edits.where({ run_id: runId }) : store.edits.where({ id });
+    await edits.filter(isRefused).modify(again);
+  });
 }
 
 function outcome(verdict: Verdict): Partial<SendInfo> | null {

@@ -5,10 +5,12 @@ import * as api from '@/api/classes';
 import { keepClass, keepClasses, watchClasses } from '@/db/desk';
 import type { ClassView } from '@shared/schemas/accounts';
 import { useSession } from './useSession';
+import { useSync } from './useSync';
 
 /** A teacher's classes: the server's list, kept on the device for when it cannot be reached. */
 export const useClasses = defineStore('classes', () => {
   const session = useSession();
+  const sync = useSync();
   const classes = shallowRef<ClassView[]>([]);
   /** Why the list on the screen may be old; null when it is fresh. */
   const error = shallowRef<ApiError | null>(null);
@@ -32,6 +34,7 @@ export const useClasses = defineStore('classes', () => {
     try {
       const { classes: fresh } = await api.getClasses();
       error.value = null;
+      sync.noteContact();
       if (session.store) await keepClasses(session.store, fresh);
     } catch (cause) {
       if (!(cause instanceof ApiError)) throw cause;
@@ -54,6 +57,11 @@ export const useClasses = defineStore('classes', () => {
   const newCode = (id: string) => keep(api.newClassCode(id));
   const newBoardPass = (id: string) => keep(api.newBoardPass(id));
   const newPin = async (studentId: string): Promise<string> => (await api.newStudentPin(studentId)).pin;
+  /** Turned down, with its reason, for one who has handed something in. */
+  async function removeStudent(id: string, studentId: string): Promise<void> {
+    await api.removeStudent(studentId);
+    await refresh(id);
+  }
 
-  return { classes, error, isLoading, load, byId, refresh, make, newCode, newBoardPass, newPin };
+  return { classes, error, isLoading, load, byId, refresh, make, newCode, newBoardPass, newPin, removeStudent };
 });

@@ -36,6 +36,8 @@ export const usePeople = defineStore('people', () => {
   const withdrawInvite = (id: string) => andLoad(api.withdrawInvite(id));
   const disable = (id: string) => andLoad(api.disablePerson(id));
   const enable = (id: string) => andLoad(api.enablePerson(id));
+  /** A link to choose a new password; null when the server mailed it. */
+  const resetLink = async (id: string): Promise<string | null> => (await api.resetLink(id)).link;
 
-  return { staff, invites, error, isLoading, load, invite, withdrawInvite, disable, enable };
+  return { staff, invites, error, isLoading, load, invite, withdrawInvite, disable, enable, resetLink };
 });

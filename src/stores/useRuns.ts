@@ -1,30 +1,14 @@
 import { defineStore } from 'pinia';
 import { v7 as uuidv7 } from 'uuid';
 import { computed, shallowRef, watch } from 'vue';
-import type { AnalysisRow, EditRow, RunRow } from '@/db/localStore';
+import type { EditRow, RunRow } from '@/db/localStore';
 import { addEdit as keepEdit, addRun as keepRun, watchRuns, type StoredRuns } from '@/db/runs';
-import type { Analysis } from '@shared/schemas/analysis';
-import type { EditChange, RawEdit } from '@shared/schemas/edit';
+import type { EditChange } from '@shared/schemas/edit';
 import type { RawRun } from '@shared/schemas/run';
-import { analyseRun } from '@shared/analysis/analyseRun';
+import { makeEntries, type RunEntry } from './runEntry';
 import { useSession } from './useSession';
 
-export interface EditEntry {
-  row: EditRow;
-  raw: RawEdit;
-}
-
-/** A run as screens show it: what was recorded, the edits over it, and what follows from both. */
-export interface RunEntry {
-  readonly row: RunRow;
-  readonly raw: RawRun;
-  /** Those the server has, in its order; then those that wait, in this device's order. */
-  readonly edits: EditEntry[];
-  /** Computed here, when first looked at. */
-  readonly analysis: Analysis;
-  /** The server's analysis of record: of these very inputs, or else its latest. */
-  readonly official: AnalysisRow | null;
-}
+export type { EditEntry, RunEntry, Unreadable } from './runEntry';
 
 const NOTHING: StoredRuns = { runs: [], edits: [], analyses: [] };
 
@@ -50,13 +34,10 @@ export const useRuns = defineStore('runs', () => {
     { immediate: true },
   );
 
-  const entries = computed<RunEntry[]>(() => {
-    const editsOf = groupBy(stored.value.edits, (row) => row.run_id);
-    const analysesOf = groupBy(stored.value.analyses, (row) => row.run_id);
-    return stored.value.runs
-      .map((row) => makeEntry(row, editsOf.get(row.id) ?? [], analysesOf.get(row.id) ?? []))
-      .sort((a, b) => b.row.made_wall_ms - a.row.made_wall_ms);
-  });
+  const made = computed(() => makeEntries(stored.value));
+  const entries = computed(() => [...made.value.entries].sort((a, b) => b.row.made_wall_ms - a.row.made_wall_ms));
+  /** Kept runs and edits this program cannot read. */
+  const unreadable = computed(() => made.value.unreadable);
   const byId = computed(() => new Map(entries.value.map((entry) => [entry.row.id, entry])));
   const entry = (id: string): RunEntry | undefined => byId.value.get(id);
 
@@ -90,59 +71,5 @@ export const useRuns = defineStore('runs', () => {
     return session.store;
   }
 
-  return { entries, entry, isLoaded, addRun, addEdit };
+  return { entries, unreadable, entry, isLoaded, addRun, addEdit };
 });
-
-function makeEntry(row: RunRow, editRows: EditRow[], analyses: AnalysisRow[]): RunEntry {
-  const edits = editRows.sort(inForceOrder).map((edit) => ({ row: edit, raw: parsed<RawEdit>(edit) }));
-  return {
-    row,
-    edits,
-    get raw() {
-      return parsed<RawRun>(row);
-    },
-    get analysis() {
-      return analysed(row, edits);
-    },
-    get official() {
-      const digest = analyses.length > 1 ? analysed(row, edits).input_digest : null;
-      return (
-        analyses.find((analysis) => analysis.input_digest === digest) ??
-        analyses.reduce<AnalysisRow | null>((a, b) => (a && a.server_seq > b.server_seq ? a : b), null)
-      );
-    },
-  };
-}
-
-const inForceOrder = (a: EditRow, b: EditRow) =>
-  (a.receipt?.server_seq ?? Infinity) - (b.receipt?.server_seq ?? Infinity) || a.created_seq - b.created_seq;
-
-/** Texts never change under a digest, so neither does what follows from them. */
-const parsedTexts = new Map<string, unknown>();
-function parsed<T>(row: { digest: string; raw: string }): T {
-  if (!parsedTexts.has(row.digest)) parsedTexts.set(row.digest, JSON.parse(row.raw));
-  return parsedTexts.get(row.digest) as T;
-}
-
-const analyses = new Map<string, Analysis>();
-function analysed(row: RunRow, edits: EditEntry[]): Analysis {
-  const key = [row.digest, ...edits.map((edit) => edit.row.digest)].join();
-  const known = analyses.get(key);
-  if (known) return known;
-  const analysis = analyseRun({
-    run: { digest: row.digest, content: parsed<RawRun>(row) },
-    edits: edits.map((edit) => ({ digest: edit.row.digest, content: edit.raw })),
-  });
-  analyses.set(key, analysis);
-  return analysis;
-}
-
-function groupBy<T>(rows: T[], key: (row: T) => string): Map<string, T[]> {
-  const groups = new Map<string, T[]>();
-  for (const row of rows) {
-    const group = groups.get(key(row));
-    if (group) group.push(row);
-    else groups.set(key(row), [row]);
-  }
-  return groups;
-}

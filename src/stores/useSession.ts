@@ -92,10 +92,18 @@ export const useSession = defineStore('session', () => {
     void askToKeep(navigator.storage);
   }
 
-  /** One way in: ask, and settle with the answer, while no other tab sends or changes the account. */
-  function come<Answer extends { me: Me | null }>(ask: () => Promise<Answer>, claim: boolean): Promise<Answer> {
+  /**
+   * One way in: ask, and settle with the answer, while no other tab sends or changes the account.
+   * `onAnswer` hears the answer before storage is touched, which may fail.
+   */
+  function come<Answer extends { me: Me | null }>(
+    ask: () => Promise<Answer>,
+    claim: boolean,
+    onAnswer: (answer: Answer) => void = () => undefined,
+  ): Promise<Answer> {
     return withUploadLock(async () => {
       const answer = await ask();
+      onAnswer(answer);
       if (!answer.me) throw new ApiError('signed_out', 200, '', 'the server did not say who is signed in');
       await noteSignOutOwed(false);
       await settle(answer.me, claim);
@@ -103,8 +111,13 @@ export const useSession = defineStore('session', () => {
     });
   }
 
-  /** `claim` takes runs timed on this phone without a class along. */
-  const join = (body: Body<typeof api.join>, claim: boolean) => come(() => api.join(body), claim);
+  /** `claim` takes runs timed on this phone without a class along. The PIN is told once: `onPin` has it first of all. */
+  const join = (body: Body<typeof api.join>, claim: boolean, onPin?: (pin: string) => void) =>
+    come(
+      () => api.join(body),
+      claim,
+      ({ pin }) => onPin?.(pin),
+    );
   const comeBack = (body: Body<typeof api.comeBack>, claim: boolean) => come(() => api.comeBack(body), claim);
   const signIn = (body: Body<typeof api.signIn>, claim: boolean) => come(() => api.signIn(body), claim);
   const setUp = (body: Body<typeof api.setUp>) => come(() => api.setUp(body), false);

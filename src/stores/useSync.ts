@@ -41,6 +41,11 @@ export const useSync = defineStore('sync', () => {
     return waiting.value > 0 ? 'waiting' : 'quiet';
   });
 
+  /** The server answered, about whatever it was. */
+  function noteContact(): void {
+    lastContact_wall_ms.value = Date.now();
+  }
+
   function heed(outcome: RoundOutcome): void {
     isSending.value = false;
     trouble.value = null;
@@ -50,7 +55,7 @@ export const useSync = defineStore('sync', () => {
     else if (outcome.kind === 'cannot_reach') {
       trouble.value = 'unreachable';
       lastError.value = outcome.error;
-    } else if (outcome.kind !== 'not_owner') lastContact_wall_ms.value = Date.now();
+    } else if (outcome.kind !== 'not_owner') noteContact();
   }
 
   function follow(store: LocalStore): () => void {
@@ -118,5 +123,5 @@ export const useSync = defineStore('sync', () => {
     if (session.store) await sendOnceMore(session.store, type, id);
   }
 
-  return { state, waiting, lastContact_wall_ms, lastError, sendNow, tryAgain };
+  return { state, waiting, lastContact_wall_ms, lastError, noteContact, sendNow, tryAgain };
 });

@@ -3,7 +3,7 @@ import type { fetchFeed, sendBatch } from '@/api/sync';
 import { applyFeed, feedCursor, keepEarlyAnalyses, noteEpoch } from '@/db/feed';
 import type { LocalStore } from '@/db/localStore';
 import { writeMeta } from '@/db/meta';
-import { applyVerdicts, awaitsAnalysis, countWaiting, outbox, park } from '@/db/outbox';
+import { applyVerdicts, awaitsAnalysis, countWaiting, outbox, park, parkEditsOfRefusedRuns } from '@/db/outbox';
 import { MAX_BATCH_ITEMS } from '@shared/schemas/limits';
 import type { SyncItem } from '@shared/schemas/sync';
 import { fillBatch } from './fillBatch';
@@ -61,6 +61,7 @@ async function sendWaiting(parts: RoundParts): Promise<number> {
   const tried = new Set<string>();
   let settled = 0;
   for (;;) {
+    await parkEditsOfRefusedRuns(parts.store);
     const batch = fillBatch(await outbox(parts.store, tried, MAX_BATCH_ITEMS));
     if (batch.length === 0) return settled;
     parts.onSending();

@@ -92,6 +92,19 @@ describe('every screen', () => {
     expect(found).toEqual([]);
   });
 
+  it('of keying in has no violation wherever it is scrolled to', async () => {
+    const page = await pageOn(PHONE);
+    const half = async () => {
+      const keep = page.getByRole('button', { name: /^Keep/ });
+      await keep.waitFor();
+      await keep.evaluate((button) => {
+        const { top, height } = button.getBoundingClientRect();
+        window.scrollBy(0, top + height / 2 - (window.innerHeight - 60));
+      });
+    };
+    expect(await look(page, '/bench/key-in', half)).toEqual([]);
+  });
+
   it('of a student with runs has no violation', async () => {
     const page = await pageOn(PHONE);
     const found: string[] = [];

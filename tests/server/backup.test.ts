@@ -1,11 +1,12 @@
-import { existsSync, mkdtempSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import sqlite3 from 'sqlite3';
 import { afterEach, beforeEach, expect, test } from 'vitest';
 import { backupDatabase, restoreDatabase } from '../../server/services/backup';
 import { startServer, type TestServer } from '../support/startServer';
 import { createApiClient } from './helpers/apiClient';
-import { createSchool, must, PASSWORD } from './helpers/people';
+import { createSchool, must, PASSWORD, tokenIn } from './helpers/people';
 import { batch, runItem } from './helpers/runs';
 
 let folder: string;
@@ -24,7 +25,7 @@ afterEach(async () => {
 });
 
 test('R12 after a restore the epoch is new, what the backup held is there, and the phone’s resend fills the rest', async () => {
-  const { student } = await createSchool(server);
+  const { student, ownClass } = await createSchool(server);
   const [kept, lost] = [runItem(), runItem()];
   const first = must(await student.post('/api/sync', batch([kept])));
   await backupDatabase(dataDir, file);
@@ -33,7 +34,8 @@ test('R12 after a restore the epoch is new, what the backup held is there, and t
   const { keptAs } = await restoreDatabase(dataDir, file);
   server = await startServer({ dataDir });
   const client = createApiClient(server.url);
-  client.cookie = student.cookie;
+  const { nickname, bench, pin } = student;
+  must(await client.post('/api/return', { code: ownClass.code, bench, nickname, pin }));
   const again = must(await client.post('/api/sync', batch([kept, lost])));
   expect(again.server_epoch).not.toBe(first.server_epoch);
   expect(again.verdicts.map((each: { verdict: string }) => each.verdict)).toEqual(['already', 'stored']);
@@ -71,6 +73,51 @@ test('what was there before the restore is kept whole, with what was still in it
   expect(await server.running.deps.database.models.Run.count()).toBe(0);
 });
 
+test.each([
+  ['that is no database any more', (content: Buffer) => content.fill('x', 0, 100)],
+  ['with a page overwritten', (content: Buffer) => content.fill(0xff, 4096, 8192)],
+  ['cut off', (content: Buffer) => content.subarray(0, 5_000)],
+])('a database %s is kept as it was, and the backup takes its place', async (_what, damage) => {
+  await createSchool(server);
+  await backupDatabase(dataDir, file);
+  await server.stop();
+  const damaged = damage(readFileSync(join(dataDir, 'swaymark.sqlite3')));
+  writeFileSync(join(dataDir, 'swaymark.sqlite3'), damaged);
+  writeFileSync(join(dataDir, 'swaymark.sqlite3-wal'), 'half a journal');
+  const { keptAs } = await restoreDatabase(dataDir, file);
+  expect(readFileSync(keptAs!).equals(damaged)).toBe(true);
+  expect(readFileSync(`${keptAs}-wal`, 'utf8')).toBe('half a journal');
+  expect(readdirSync(dataDir).filter((name) => name.includes('.part'))).toEqual([]);
+  server = await startServer({ dataDir });
+  expect(await server.running.deps.database.models.StaffAccount.count()).toBe(4);
+});
+
+test('a restore leaves nothing half done behind when it fails', async () => {
+  await backupDatabase(dataDir, file);
+  await server.stop();
+  await runSql(file, 'DROP TABLE sign_ins');
+  await expect(restoreDatabase(dataDir, file)).rejects.toThrow(/sign_ins/);
+  expect(readdirSync(dataDir).filter((name) => /part|before/.test(name))).toEqual([]);
+  server = await startServer({ dataDir });
+});
+
+test('a sign-in that was ended after the backup, and a link used after it, stay so', async () => {
+  const { coordinator, teacher } = await createSchool(server);
+  must(await coordinator.post('/api/invites', { email: 'late@example.org', role: 'coordinator' }));
+  const token = tokenIn((await server.mails()).at(-1)!, 'invite');
+  await backupDatabase(dataDir, file);
+  const { cookie } = teacher;
+  must(await teacher.post('/api/sign-out'));
+  await server.stop();
+  await restoreDatabase(dataDir, file);
+  server = await startServer({ dataDir });
+  const client = createApiClient(server.url);
+  client.cookie = cookie;
+  expect((await client.get('/api/classes')).status).toBe(401);
+  const accepted = await client.post('/api/invites/accept', { token, name: 'Late', password: PASSWORD });
+  expect(accepted.status).toBe(410);
+});
+
 test('restore refuses while a server runs on the folder', async () => {
   await backupDatabase(dataDir, file);
   await expect(restoreDatabase(dataDir, file)).rejects.toThrow(/in use by a running Swaymark server/);
@@ -94,3 +141,9 @@ test('a backup leaves one file and no half of one', async () => {
   await backupDatabase(dataDir, file);
   expect(readdirSync(folder).sort()).toEqual(['backup.sqlite3', 'data']);
 });
+
+const runSql = (path: string, sql: string) =>
+  new Promise<void>((resolve, reject) => {
+    const database = new sqlite3.Database(path);
+    database.exec(sql, (error) => database.close(() => (error ? reject(error) : resolve())));
+  });

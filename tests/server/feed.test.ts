@@ -62,6 +62,36 @@ test('edits and analyses are heard of by whoever hears of their run', async () =
   expect(await about(school.otherTeacher)).toEqual([]);
 });
 
+test('of a run’s analyses only the one in force comes, whatever the cursor was', async () => {
+  const run = runItem();
+  const { cursor } = await feed(school.student);
+  await give(school.student, run);
+  const first = await feed(school.student, `?after=${cursor}`);
+  await give(school.student, editItem(run.id, { kind: 'leave_out_mark', mark: 2 }));
+  await give(school.student, editItem(run.id, { kind: 'leave_out_mark', mark: 3 }));
+  const marksUsed = (part: FeedAnswer) =>
+    part.items.flatMap((item) => (item.type === 'analysis' ? [item.analysis.marks_used] : []));
+  expect(marksUsed(first)).toEqual([11]);
+  expect(marksUsed(await feed(school.student, `?after=${cursor}`))).toEqual([9]);
+  expect(marksUsed(await feed(school.student, `?after=${first.cursor}`))).toEqual([9]);
+});
+
+test('a row that cannot be read is passed over, and all after it comes', async () => {
+  const other = await startServer();
+  const { student } = await createSchool(other);
+  const items = [runItem(), runItem()];
+  must(await student.post('/api/sync', batch(items)));
+  await other.running.deps.analyses.settled();
+  await other.running.deps.database.sequelize.query(
+    `UPDATE analyses SET body = '{"half":' WHERE run_id = '${items[0]!.id}'`,
+  );
+  const { items: heard, more } = await feed(student);
+  expect(heard.flatMap((item) => (item.type === 'analysis' ? [item.analysis.run_id] : []))).toEqual([items[1]!.id]);
+  expect(idsOf(heard, 'run')).toEqual(items.map(({ id }) => id));
+  expect(more).toBe(false);
+  await other.stop();
+});
+
 test('names: bench mates and the teacher see nicknames, a coordinator of no class sees none', async () => {
   const id = await give(school.student, runItem());
   const author = async (client: ApiClient) => {

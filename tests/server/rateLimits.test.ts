@@ -1,16 +1,17 @@
 import { afterEach, expect, test } from 'vitest';
+import type { Config } from '../../server/config';
 import { RATE_LIMITS } from '../../server/rateLimits';
 import { startServer, type TestServer } from '../support/startServer';
 import { createApiClient } from './helpers/apiClient';
-import { createClass, createSchool, joinStudent, PASSWORD } from './helpers/people';
+import { createClass, createSchool, joinStudent, must, PASSWORD } from './helpers/people';
 
 const MINUTE_MS = 60_000;
 let server: TestServer;
 let later = 0;
 afterEach(() => server.stop());
-const start = async (limits: Partial<typeof RATE_LIMITS>) => {
+const start = async (limits: Partial<typeof RATE_LIMITS>, config: Partial<Config> = {}) => {
   later = 0;
-  server = await startServer({ rateLimits: { ...RATE_LIMITS, ...limits } }, () => Date.now() + later);
+  server = await startServer({ ...config, rateLimits: { ...RATE_LIMITS, ...limits } }, () => Date.now() + later);
   return createSchool(server);
 };
 const guest = () => createApiClient(server.url);
@@ -70,10 +71,90 @@ test('reset mails are limited per address, the same for one nobody has', async (
   }
 });
 
-test('requests from one address are limited as a whole', async () => {
-  await start({ requestsPerMinute: 30 });
-  const replies = await Promise.all(Array.from({ length: 40 }, () => guest().get('/api/health')));
+test('one forgotten PIN holds back nobody else behind the same address', async () => {
+  const { ownClass, student } = await start({ failedPerAccount: 3, failedPerAddress: 4 });
+  const wrong = student.pin === '000000' ? '111111' : '000000';
+  const comeBack = (pin: string, nickname = 'Otter') =>
+    guest().post('/api/return', { code: ownClass.code, bench: 1, nickname, pin });
+  const replies = [];
+  for (let i = 0; i < 12; i += 1) replies.push((await comeBack(wrong)).status);
+  expect(replies).toEqual([401, 401, 401, ...Array<number>(9).fill(429)]);
+  const mate = await joinStudent(server, ownClass.code, 1, 'Newt');
+  expect((await comeBack(mate.pin, 'Newt')).status).toBe(200);
+  expect((await signIn(PASSWORD)).status).toBe(200);
+});
+
+test('with a new PIN a student who had used up the tries comes back at once', async () => {
+  const { ownClass, student, teacher } = await start({ failedPerAccount: 2 });
+  const comeBack = (pin: string) =>
+    guest().post('/api/return', { code: ownClass.code, bench: 1, nickname: 'Otter', pin });
+  const wrong = student.pin === '000000' ? '111111' : '000000';
+  for (const status of [401, 401, 429]) expect((await comeBack(wrong)).status).toBe(status);
+  const { pin } = must(await teacher.post(`/api/students/${student.me.id}/new-pin`));
+  expect((await comeBack(pin)).status).toBe(200);
+});
+
+test('wrong passwords from one address do not shut the account out elsewhere, until very many came', async () => {
+  await start({ failedPerAccount: 2, failedPerAccountAnywhere: 5 }, { trustProxyHops: 1 });
+  const from = (address: string, password: string) =>
+    guest().post('/api/sign-in', { email: 'mira@example.org', password }, { headers: { 'X-Forwarded-For': address } });
+  for (const status of [401, 401, 429]) expect((await from('192.0.2.1', 'not the password')).status).toBe(status);
+  expect((await from('198.51.100.7', PASSWORD)).status).toBe(200);
+  for (const status of [401, 401, 429]) expect((await from('192.0.2.2', 'not the password')).status).toBe(status);
+  expect((await from('192.0.2.3', 'not the password')).status).toBe(401);
+  expect((await from('198.51.100.7', PASSWORD)).status).toBe(429);
+});
+
+test('130 good joins at one moment from one address all come in', async () => {
+  const { teacher } = await start({});
+  const classes = await Promise.all([1, 2, 3].map((n) => createClass(teacher, `Physics ${n}`)));
+  const replies = await Promise.all(
+    Array.from({ length: 130 }, (_, i) =>
+      guest().post('/api/join', { code: classes[i % 3]!.code, bench: 1 + (i % 40), nickname: `Student ${i}` }),
+    ),
+  );
+  expect(replies.filter(({ status }) => status !== 200)).toEqual([]);
+}, 120_000);
+
+test('of many wrong codes at one moment those over the limit are not told they were wrong', async () => {
+  await start({ failedPerAddress: 4 });
+  const letters = 'BCDFGHJKMP';
+  const replies = await Promise.all(
+    [...letters].map((letter) => guest().post('/api/classes/look-up', { code: letter.repeat(6) })),
+  );
+  expect(replies.filter(({ status }) => status === 404)).toHaveLength(4);
+});
+
+test('tries that wait for their answer at one moment are bounded', async () => {
+  await start({ triesAtOnce: 5 });
+  const replies = await Promise.all(Array.from({ length: 9 }, (_, i) => signIn(PASSWORD, `n${i}@example.org`)));
+  const statuses = replies.map(({ status }) => status);
+  expect(statuses.filter((status) => status === 429).length).toBeGreaterThan(0);
+  expect(statuses.filter((status) => status === 401).length).toBeGreaterThanOrEqual(5);
+  expect((await signIn(PASSWORD)).status).toBe(200);
+});
+
+test('with the clock set back nobody waits longer than one window', async () => {
+  await start({ failedPerAccount: 2 });
+  later = 40 * 24 * 60 * MINUTE_MS;
+  for (const status of [401, 401, 429]) expect((await signIn('not the password')).status).toBe(status);
+  later = 0;
+  expect((await signIn(PASSWORD)).status).toBe(200);
+});
+
+test('one phone that asks without end is held back, the rest of the school is not', async () => {
+  const { student, teacher } = await start({ requestsPerSignIn: 30, requestsPerAddress: 100 });
+  const replies = await Promise.all(Array.from({ length: 40 }, () => student.get('/api/me')));
   const over = replies.filter(({ status }) => status === 429);
   expect(over.length).toBeGreaterThanOrEqual(10);
-  expect(over[0]!.body.error.code).toBe('too_many_requests');
+  expect(over[0]!.body.error).toMatchObject({ code: 'too_many_requests', message: expect.stringContaining('sign-in') });
+  expect((await teacher.get('/api/me')).status).toBe(200);
+  expect((await guest().get('/api/me')).status).toBe(200);
+});
+
+test('requests with no sign-in are limited by address, but for whether the server is well', async () => {
+  await start({ requestsPerAddress: 30 });
+  const replies = await Promise.all(Array.from({ length: 40 }, () => guest().get('/api/me')));
+  expect(replies.filter(({ status }) => status === 429).length).toBeGreaterThanOrEqual(10);
+  expect((await guest().get('/api/health')).status).toBe(200);
 });

@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { afterAll, beforeAll, describe, expect, test, vi } from 'vitest';
 import { canonicalText, digestOf } from '@shared/schemas/canonical';
 import { SyncAnswer, type Verdict } from '@shared/schemas/sync';
 import { startServer, type TestServer } from '../support/startServer';
@@ -137,7 +137,6 @@ describe('what is taken', () => {
     ['an escaped NUL', 'a\u0000b'],
     ['emoji and right-to-left text', '🦊 שלום'],
     ['a line separator', 'a\u2028b'],
-    ['half of a surrogate pair', '\ud800'],
   ])('a note with %s is kept byte for byte', async (_what, note) => {
     const item = runItem(rawRun({ note }));
     expect(words(await verdictsOf(school.student, [item]))).toEqual(['stored']);
@@ -208,6 +207,10 @@ describe('what is not taken', () => {
       sealedAs(run.id, loose.replace('swaymark-run', 'other-run')),
       runItem(rawRun({ capture: tapCapture({ mark_us: [0, 5, 5] }) })),
       runItem(rawRun({ capture: tapCapture({ mark_us: [0, 1.5] }) })),
+      runItem(rawRun({ note: 'half of a surrogate pair \ud800' })),
+      sealedAs(run.id, '{"format":{"toString":1,"valueOf":1}}'),
+      sealedAs(run.id, loose.replace('"version":1', '"version":{"toString":null}')),
+      sealedAs(run.id, `{"format":${'['.repeat(90_000)}${']'.repeat(90_000)}}`),
     ];
     const verdicts = await verdictsOf(school.student, [good[0], ...bad, good[1]]);
     expect(words(verdicts)).toEqual(['stored', ...bad.map(() => 'refused'), 'stored']);
@@ -250,6 +253,20 @@ describe('what is not taken', () => {
     expect(codes(await verdictsOf(await author(), [edit]))).toEqual([expected]);
   });
 
+  test('a student withdraws edits of the bench, and no edit of the teacher’s', async () => {
+    const run = runItem();
+    const [own, ofTeacher] = [1, 2].map((mark) => editItem(run.id, { kind: 'leave_out_mark', mark }));
+    await handIn(school.student, [run, own]);
+    await handIn(school.teacher, [ofTeacher]);
+    const withdrawals = [own!, ofTeacher!].map(({ id }) => editItem(run.id, { kind: 'withdraw', edit_id: id }));
+    const verdicts = await verdictsOf(school.student, withdrawals);
+    expect(codes(verdicts)).toEqual(['stored', 'edit_of_staff']);
+    expect('message' in verdicts[1]! && verdicts[1].message).toMatch(/Ask them to withdraw it/);
+    expect(
+      words(await verdictsOf(school.teacher, [editItem(run.id, { kind: 'withdraw', edit_id: ofTeacher!.id })])),
+    ).toEqual(['stored']);
+  });
+
   test('an edit id that is held by its author does not open for another', async () => {
     const run = runItem();
     const edit = editItem(run.id, { kind: 'note', text: 'mine' });
@@ -280,10 +297,56 @@ describe('what is not taken', () => {
         transaction,
       ),
     );
-    expect(codes(await verdictsOf(busy, [runItem(), first]))).toEqual(['day_is_full', 'already']);
+    const second = runItem();
+    const edit = editItem(second.id, { kind: 'note', text: 'of the second' });
+    const verdicts = await verdictsOf(busy, [second, first, edit]);
+    expect(codes(verdicts)).toEqual(['day_is_full', 'already', 'run_unknown']);
+    expect(words(verdicts)).toEqual(['later', 'already', 'later']);
     await database.writeTransaction((transaction) =>
       database.run(`DELETE FROM runs WHERE id LIKE 'filler-%'`, [], transaction),
     );
+  });
+});
+
+describe('analyses are not made anew', () => {
+  const rowsOf = async (run_id: string) => {
+    await server.running.deps.analyses.settled();
+    return server.running.deps.database.models.StoredAnalysis.findAll({ where: { run_id } });
+  };
+
+  test('when a run and its edits are sent again', async () => {
+    const run = runItem();
+    const items = [run, editItem(run.id, { kind: 'leave_out_mark', mark: 4 })];
+    await handIn(school.student, items);
+    const { analyses } = server.running.deps;
+    await analyses.settled();
+    const computing = vi.spyOn(server.running.deps.log, 'error');
+    // A row that cannot be computed is told to the log, so silence says that nothing was computed.
+    await server.running.deps.database.sequelize.query(`UPDATE runs SET raw = '{' WHERE id = '${run.id}'`);
+    const again = await handIn(school.student, items);
+    expect(again.analyses).toHaveLength(1);
+    await analyses.settled();
+    expect(computing).not.toHaveBeenCalled();
+    computing.mockRestore();
+  });
+
+  test('for a note', async () => {
+    const run = runItem();
+    await handIn(school.student, [run]);
+    const before = await rowsOf(run.id);
+    await handIn(school.student, [editItem(run.id, { kind: 'note', text: 'a calm day' })]);
+    expect((await rowsOf(run.id)).map(({ seq }) => seq)).toEqual(before.map(({ seq }) => seq));
+    expect(before).toHaveLength(1);
+  });
+
+  test('and one that is damaged costs no receipt', async () => {
+    const run = runItem();
+    await handIn(school.student, [run]);
+    await rowsOf(run.id);
+    await server.running.deps.database.sequelize.query(`UPDATE analyses SET body = '{' WHERE run_id = '${run.id}'`);
+    const answer = await handIn(school.student, [run]);
+    expect(words(answer.verdicts)).toEqual(['already']);
+    expect(answer.analyses).toEqual([]);
   });
 });
 

@@ -1,10 +1,12 @@
+import { once } from 'node:events';
+import { request, type IncomingMessage } from 'node:http';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { ErrorAnswer } from '@shared/schemas/errors';
 import { MAX_BODY_BYTES, MAX_SYNC_BYTES } from '@shared/schemas/limits';
 import { startServer, type TestServer } from '../support/startServer';
-import { createApiClient, type Reply } from './helpers/apiClient';
+import { createApiClient, type ApiClient, type Reply } from './helpers/apiClient';
 import { databaseDigest } from './helpers/databaseDigest';
-import { createSchool, type School } from './helpers/people';
+import { createSchool, joinStudent, type School } from './helpers/people';
 import { batch, rawRun, runItem } from './helpers/runs';
 
 let server: TestServer;
@@ -77,9 +79,52 @@ describe('limits', () => {
     expect(errorOf(over)).toEqual([413, 'too_large']);
     expect(over.body.error.message).toContain(String(MAX_SYNC_BYTES));
   });
-  test('every other route has the small limit', async () => {
-    const over = await createApiClient(server.url).post('/api/sign-in', { email: 'x'.repeat(MAX_BODY_BYTES) });
-    expect(errorOf(over)).toEqual([413, 'too_large']);
+  test('every other route has the small limit, and a smaller one for nobody', async () => {
+    const post = (client: ApiClient, bytes: number) => client.post('/api/sign-in', { email: 'x'.repeat(bytes) });
+    expect(errorOf(await post(school.student, MAX_BODY_BYTES))).toEqual([413, 'too_large']);
+    expect(errorOf(await post(school.student, 8_000))).toEqual([400, 'bad_input']);
+    expect(errorOf(await post(createApiClient(server.url), 8_000))).toEqual([413, 'too_large']);
+  });
+  test('nothing of a body is read for somebody who may not send it', async () => {
+    const rawBody = '{"half": '.repeat(100_000);
+    expect(errorOf(await createApiClient(server.url).post('/api/sync', undefined, { rawBody }))).toEqual([
+      401,
+      'not_signed_in',
+    ]);
+    expect(errorOf(await school.student.post('/api/classes', undefined, { rawBody }))).toEqual([403, 'not_allowed']);
+  });
+  test('a sign-in that ends while the body is on its way counts no more', async () => {
+    const client = createApiClient(server.url);
+    client.cookie = (await joinStudent(server, school.ownClass.code, 9, 'Slow')).cookie;
+    const item = runItem();
+    const text = JSON.stringify(batch([item]));
+    const sending = request(`${server.url}/api/sync`, {
+      method: 'POST',
+      headers: {
+        'X-Swaymark': '1',
+        'Content-Type': 'application/json',
+        'Content-Length': Buffer.byteLength(text),
+        Cookie: client.cookie,
+      },
+    });
+    const answered = once(sending, 'response') as Promise<[IncomingMessage]>;
+    sending.write(text.slice(0, 100));
+    await new Promise((resolve) => setTimeout(resolve, 200));
+    await client.post('/api/sign-out');
+    sending.end(text.slice(100));
+    const [answer] = await answered;
+    answer.resume();
+    expect(answer.statusCode).toBe(401);
+    expect(await server.running.deps.database.models.Run.count({ where: { id: item.id } })).toBe(0);
+  });
+  test('what is wrong is told in twenty fields at most, each path cut short', async () => {
+    const manyKeys = Object.fromEntries(Array.from({ length: 5_000 }, (_, i) => [`key${i}`, 1]));
+    const manyItems = batch(Array.from({ length: 50 }, () => ({ type: 'run' })));
+    for (const body of [{ ...batch([]), ...manyKeys }, manyItems, { ...batch([]), ['k'.repeat(500_000)]: 1 }]) {
+      const reply = await school.student.post('/api/sync', body);
+      expect(reply.body.error.fields.length).toBeLessThanOrEqual(20);
+      expect(reply.text.length).toBeLessThan(10_000);
+    }
   });
 });
 

@@ -1,3 +1,4 @@
+import type { Analysis } from '@shared/schemas/analysis';
 import type { RawEdit } from '@shared/schemas/edit';
 import { FormatError, readEdit, readRun } from '@shared/schemas/readSealed';
 import type { RawRun } from '@shared/schemas/run';
@@ -38,7 +39,7 @@ export async function handIn(deps: Deps, actor: SignedIn, request: SyncRequest):
   const runs: RunItem[] = [];
   const edits: EditItem[] = [];
   for (const item of request.items) {
-    const reason = item.type === 'run' ? formatReason(() => readRunItem(item)) : formatReason(() => readEditItem(item));
+    const reason = whyNotReadable(deps, item);
     if (reason) verdicts.set(item, notTaken(item, reason));
     else if (item.type === 'run') runs.push(item);
     else edits.push(item);
@@ -60,15 +61,23 @@ export async function handIn(deps: Deps, actor: SignedIn, request: SyncRequest):
     await storeRuns(deps, delivery, runs, verdicts, transaction);
     await storeEdits(deps, delivery, edits, verdicts, transaction);
   });
-  const touched = runsToAnalyse(request.items, verdicts);
-  deps.analyses.add(touched);
-  const remaining = ANALYSES_WITHIN_MS - (deps.now() - received_ms);
   return {
     server_epoch: deps.epoch,
     verdicts: request.items.map((item) => verdicts.get(item)!),
-    analyses: await deps.analyses.ready(touched, remaining),
+    analyses: await analysesOf(deps, heldRuns(request.items, verdicts), received_ms),
     server_wall_ms: deps.now(),
   };
+}
+
+/** The receipts are given by now: whatever goes wrong here, the analyses come with the feed or not at all. */
+async function analysesOf(deps: Deps, runIds: string[], received_ms: number): Promise<Analysis[]> {
+  try {
+    await deps.analyses.addMissing(runIds);
+    return await deps.analyses.ready(runIds, ANALYSES_WITHIN_MS - (deps.now() - received_ms));
+  } catch (error) {
+    deps.log.error({ err: error, runs: runIds }, 'analyses could not be given');
+    return [];
+  }
 }
 
 function readRunItem(item: RunItem): Reason | undefined {
@@ -88,18 +97,26 @@ const ID_DIFFERS: Reason = {
   fields: [{ path: 'id', message: 'not the id inside the item' }],
 };
 
-function formatReason(read: () => Reason | undefined): Reason | undefined {
+const NOT_READABLE: Reason = {
+  verdict: 'refused',
+  code: 'not_readable',
+  message: 'The server could not read this item and took the others. Export it and tell the teacher.',
+};
+
+/** Nothing that is inside one item may stop the others. */
+function whyNotReadable(deps: Deps, item: SyncItem): Reason | undefined {
   try {
-    return read();
+    return item.type === 'run' ? readRunItem(item) : readEditItem(item);
   } catch (error) {
     if (error instanceof FormatError) {
       return { verdict: 'refused', code: error.code, message: error.message, fields: error.fields };
     }
-    throw error;
+    deps.log.error({ err: error, item: item.id }, 'an item could not be read');
+    return NOT_READABLE;
   }
 }
 
-function runsToAnalyse(items: readonly SyncItem[], verdicts: ReadonlyMap<SyncItem, Verdict>): string[] {
+function heldRuns(items: readonly SyncItem[], verdicts: ReadonlyMap<SyncItem, Verdict>): string[] {
   const held = items.filter((item) => hasReceipt(verdicts.get(item)!));
   return [...new Set(held.map((item) => (item.type === 'run' ? item.id : item.run_id)))];
 }

@@ -1,4 +1,5 @@
 import type { Transaction } from 'sequelize';
+import type { RawEdit } from '@shared/schemas/edit';
 import { MAX_EDITS_PER_DAY } from '@shared/schemas/limits';
 import type { SyncItem, Verdict } from '@shared/schemas/sync';
 import type { Deps } from '../../deps';
@@ -9,11 +10,12 @@ import { newReceiptCode } from '../secrets';
 import type { Delivery, EditItem } from './handIn';
 import {
   DAY_IS_FULL,
+  EDIT_OF_STAFF,
   NOT_YOURS,
   OTHER_BYTES,
   RUN_NOT_TAKEN,
   RUN_UNKNOWN,
-  hasReceipt,
+  isNeverTaken,
   notTaken,
   taken,
   type Reason,
@@ -54,8 +56,9 @@ export async function storeEdits(
   const held = new Map((await heldEdits(deps, items, transaction)).map((row) => [row.id, row]));
   const runs = new Map((await editedRuns(deps, items, transaction)).map((row) => [row.id, row]));
   const notTakenRuns = new Set(
-    [...verdicts].flatMap(([{ type, id }, verdict]) => (type === 'run' && !hasReceipt(verdict) ? [id] : [])),
+    [...verdicts].flatMap(([{ type, id }, verdict]) => (type === 'run' && isNeverTaken(verdict) ? [id] : [])),
   );
+  const ofStaff = await editsOfStaff(deps, delivery, items, transaction);
   let left = MAX_EDITS_PER_DAY - (await editsToday(deps, delivery, transaction));
   const fresh: EditRow[] = [];
   for (const item of items) {
@@ -63,7 +66,8 @@ export async function storeEdits(
     const run = runs.get(item.run_id);
     const reason = there
       ? reasonAgainstHeld(delivery, item, there)
-      : reasonAgainstNew(delivery, run, notTakenRuns.has(item.run_id), left);
+      : (reasonAgainstNew(delivery, run, notTakenRuns.has(item.run_id), left) ??
+        (ofStaff.has(withdrawnBy(item)) ? EDIT_OF_STAFF : undefined));
     if (reason) {
       verdicts.set(item, notTaken(item, reason));
       if (reason === NOT_YOURS) await noteActivity(deps, actor, 'edits.foreign_id', item.id, transaction);
@@ -119,6 +123,31 @@ function reasonAgainstNew(
 function mayEdit({ actor, ownClassIds }: Delivery, run: EditedRun): boolean {
   if (actor.kind === 'student') return run.class_id === actor.student.class_id && run.bench === actor.student.bench;
   return run.owner_id === actor.id || (run.class_id !== null && ownClassIds.has(run.class_id));
+}
+
+/** Of the edits a student wants to withdraw, those that are not a student's. */
+async function editsOfStaff(
+  { database }: Deps,
+  { actor }: Delivery,
+  items: readonly EditItem[],
+  transaction: Transaction,
+): Promise<Set<string | undefined>> {
+  if (actor.kind !== 'student') return new Set();
+  const targets = items.map(withdrawnBy).filter((id) => id !== undefined);
+  const rows = await selectWhereIn<{ id: string; author_kind: string }>(
+    database,
+    'SELECT id, author_kind FROM edits',
+    'id',
+    targets,
+    transaction,
+  );
+  return new Set(rows.filter(({ author_kind }) => author_kind === 'staff').map(({ id }) => id));
+}
+
+/** The edit this one takes out of force. The text was read and checked before it came here. */
+function withdrawnBy({ raw }: EditItem): string | undefined {
+  const { change } = JSON.parse(raw) as RawEdit;
+  return change.kind === 'withdraw' ? change.edit_id : undefined;
 }
 
 /** An edit is heard of by whoever hears of its run. */

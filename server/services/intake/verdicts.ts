@@ -30,6 +30,9 @@ export const notTaken = (item: SyncItem, { verdict, code, message, fields = [] }
 
 export const hasReceipt = (verdict: Verdict) => verdict.verdict === 'stored' || verdict.verdict === 'already';
 
+/** Refused or in conflict: sending it again changes nothing. */
+export const isNeverTaken = (verdict: Verdict) => verdict.verdict === 'refused' || verdict.verdict === 'conflict';
+
 export const OTHER_BYTES: Reason = {
   verdict: 'conflict',
   code: 'other_content',
@@ -60,4 +63,9 @@ export const RUN_NOT_TAKEN: Reason = {
   verdict: 'refused',
   code: 'run_not_taken',
   message: 'The run this edit belongs to was not taken, so the edit has nothing to lie over.',
+};
+export const EDIT_OF_STAFF: Reason = {
+  verdict: 'refused',
+  code: 'edit_of_staff',
+  message: 'A teacher or volunteer made the edit this one would withdraw. Ask them to withdraw it.',
 };

@@ -72,6 +72,6 @@ export function filterLines(lines: RunLine[], filters: RunFilters): RunLine[] {
 
 /** The server's analysis while nothing newer waits here: a long list must not be computed anew on every device. */
 function listedAnalysis(entry: RunEntry): RunEntry['analysis'] {
-  const isAhead = entry.edits.some(({ row }) => row.receipt === null);
+  const isAhead = entry.edits.some(({ row }) => row.state === 'waiting');
   return (isAhead ? null : entry.official?.analysis) ?? entry.analysis;
 }

@@ -84,10 +84,24 @@ describe('analyseRun', () => {
 
   test('has another key for another method, run or order of edits, and the same for the same', () => {
     const run = rawTapRun();
-    const note = (text: string): EditChange => ({ kind: 'note', text });
-    const [a, b] = [analysed(run, note('a'), note('b')), analysed(run, note('b'), note('a'))];
+    const count = (swings: number): EditChange => ({ kind: 'set_swings', swings });
+    const [a, b] = [analysed(run, count(20), count(21)), analysed(run, count(21), count(20))];
     expect(a.input_digest).not.toBe(b.input_digest);
-    expect(analysed(run, note('a'), note('b'))).toEqual(a);
+    expect(analysed(run, count(20), count(21))).toEqual(a);
+  });
+
+  test('is the same with a note, or with an edit that was withdrawn, as without: figures, flags and key', () => {
+    const run = rawTapRun({ times: jittered(21, 2) });
+    const leaveOut: EditChange = { kind: 'leave_out_mark', mark: 5 };
+    const note: EditChange = { kind: 'note', text: 'a draught from the window' };
+    const withdraw = (made_seq: number): EditChange => ({
+      kind: 'withdraw',
+      edit_id: rawEdits(run, note, note)[made_seq - 1]!.id,
+    });
+    expect(analysed(run, note)).toEqual(analysed(run));
+    expect(analysed(run, leaveOut, withdraw(1))).toEqual(analysed(run));
+    expect(analysed(run, note, leaveOut, withdraw(1))).toEqual(analysed(run, note, leaveOut));
+    expect(analysed(run, leaveOut).input_digest).not.toBe(analysed(run).input_digest);
   });
 
   test('states the budget of T while T0 is not known, and what would bring T0', () => {

@@ -42,6 +42,12 @@ describe('readRun and readEdit', () => {
     ['fields', text({ surprise: 1 }), undefined],
     ['not_canonical', JSON.stringify(JSON.parse(text()), null, 1), undefined],
     ['not_canonical', text({ note: ' spaces around ' }), undefined],
+    ['not_canonical', text({ note: 'half a sign \ud83e' }), undefined],
+    ['fields', text({ id: rawTapRun().id.replace('01900000', '0190000A') }), undefined],
+    ['unknown_format', '{"format":{"toString":1,"valueOf":1}}', undefined],
+    ['unknown_format', `{"format":${'['.repeat(90_000)}${']'.repeat(90_000)}}`, undefined],
+    ['unknown_version', text({ version: null }), undefined],
+    ['unknown_version', text().replace('"version":1', '"version":{"toString":null}'), undefined],
     ['too_large', text({ note: 'x'.repeat(200_001) }), undefined],
   ])('refuse with %s', (code, raw, digest) => {
     expect(refusal(raw, digest).code).toBe(code);
@@ -51,6 +57,20 @@ describe('readRun and readEdit', () => {
     const { code, fields } = refusal(text({ capture: { ...rawTapRun().capture, mark_us: [0, 5, 5] } }));
     expect(code).toBe('fields');
     expect(fields).toEqual([{ path: 'capture.mark_us', message: 'marks must rise' }]);
+  });
+
+  test('take a note in which a surrogate is only spelled out', () => {
+    const raw = text({ note: 'a backslash and ud83e: \\ud83e, and a whole sign 🦊' });
+    expect(readRun(raw, digestOf(raw)).note).toContain('\\ud83e');
+  });
+
+  test('name twenty fields at most', () => {
+    const mark_us = Array.from({ length: 1_000 }, (_, i) => i + 0.5);
+    expect(refusal(text({ capture: { ...rawTapRun().capture, mark_us } })).fields).toHaveLength(20);
+  });
+
+  test('show of an unknown version no more than its beginning', () => {
+    expect(refusal(text({ version: 'v'.repeat(1_000) })).message.length).toBeLessThan(250);
   });
 
   test('tell an edit from a run', () => {

@@ -2,10 +2,14 @@ import { freshStore } from '../support/freshStorage';
 import { describe, expect, it } from 'vitest';
 import { applyFeed, feedCursor, noteEpoch } from '@/db/feed';
 import type { LocalStore } from '@/db/localStore';
-import { applyVerdicts, outbox, sendOnceMore } from '@/db/outbox';
+import { applyVerdicts, outbox, parkEditsOfRefusedRuns, sendOnceMore } from '@/db/outbox';
 import { addEdit, addRun } from '@/db/runs';
+import { canonicalText, digestOf } from '@shared/schemas/canonical';
+import type { RawRun } from '@shared/schemas/run';
+import type { FeedItem } from '@shared/schemas/sync';
 import { EPOCH, feedAnswer, feedRun, OTHER_EPOCH, rawEdit, rawRun, stored, turnedDown } from '../support/samples';
 
+type RunItem = Extract<FeedItem, { type: 'run' }>;
 const NOWHERE = { class_id: null, bench: null };
 const everything = async (store: LocalStore) => ({
   runs: await store.runs.toArray(),
@@ -24,12 +28,36 @@ describe('applyFeed', () => {
     expect(await feedCursor(store)).toBe(12);
   });
 
-  it('keeps the cursor where it was when an item cannot be kept', async () => {
+  it.each([
+    ['is not what its digest says', (item: RunItem) => ({ ...item, raw: item.raw.replace('40120000', '40120001') })],
+    ['is not whole', (item: RunItem) => ({ ...item, raw: '{', digest: digestOf('{') })],
+    ['is nothing', (item: RunItem) => ({ ...item, raw: 'null', digest: digestOf('null') })],
+    ['is another run’s', (item: RunItem) => ({ ...item, id: rawRun().id })],
+  ])('an item whose text %s is passed over, and the rest and the cursor are kept', async (_why, spoil) => {
     const store = freshStore();
-    const unreadable = { ...feedRun(rawRun()), raw: '{' };
-    await expect(applyFeed(store, feedAnswer([feedRun(rawRun()), unreadable], 9))).rejects.toThrow();
-    expect(await feedCursor(store)).toBe(0);
-    expect(await store.runs.count()).toBe(0);
+    const good = feedRun(rawRun());
+    await applyFeed(store, feedAnswer([spoil(feedRun(rawRun())), good], 9));
+    expect(await store.runs.toCollection().primaryKeys()).toEqual([good.id]);
+    expect(await feedCursor(store)).toBe(9);
+  });
+
+  it('an item under the id and digest of a run kept here brings no other text', async () => {
+    const store = freshStore();
+    const row = await addRun(store, rawRun(), NOWHERE);
+    const other = canonicalText({ ...rawRun({ note: 'other' }), id: row.id });
+    const item = { ...feedRun(rawRun()), id: row.id, digest: row.digest };
+    await applyFeed(store, feedAnswer([{ ...item, raw: other }], 3));
+    expect(await store.runs.get(row.id)).toEqual(row);
+  });
+
+  it('a run in a format of later is kept as it is, for a page that can read it', async () => {
+    const store = freshStore();
+    const later = feedRun({ ...rawRun(), version: 2, made: undefined } as unknown as RawRun);
+    await applyFeed(store, feedAnswer([later], 3));
+    expect(await store.runs.get(later.id)).toMatchObject({
+      raw: later.raw,
+      made_wall_ms: later.receipt.received_wall_ms,
+    });
   });
 
   it('a run made here comes back with author and receipt and stays one made here', async () => {
@@ -98,6 +126,19 @@ describe('keeping runs and edits', () => {
     await Promise.all([1, 2, 3].map((n) => addEdit(store, rawEdit(id, { kind: 'set_swings', swings: 20 + n }))));
     const seqs = (await store.edits.toArray()).map((row) => (JSON.parse(row.raw) as { made_seq: number }).made_seq);
     expect(seqs.sort()).toEqual([1, 2, 3]);
+  });
+
+  it('a refused run goes back in the queue together with its edits, from either', async () => {
+    for (const way of ['run', 'edit'] as const) {
+      const store = freshStore();
+      const run = await addRun(store, rawRun(), NOWHERE);
+      const edit = await addEdit(store, rawEdit(run.id, { kind: 'set_swings', swings: 21 }));
+      await applyVerdicts(store, [turnedDown('refused', { type: 'run', id: run.id, digest: run.digest })]);
+      await parkEditsOfRefusedRuns(store);
+      expect(await outbox(store, new Set(), 50)).toEqual([]);
+      await sendOnceMore(store, way, { run, edit }[way].id);
+      expect((await outbox(store, new Set(), 50)).map(({ id }) => id)).toEqual([run.id, edit.id]);
+    }
   });
 
   it('a refused run goes back in the queue by hand, a received one never', async () => {

@@ -49,7 +49,7 @@ it('waits with the code while no run is there', async () => {
 
 it('says that no board is under a link the server does not know', async () => {
   const wrapper = await openBoard(() => said(401, 'board_pass_unknown', 'No board has this pass.'));
-  await vi.waitFor(() => expect(wrapper.text()).toContain('No board under this link'));
+  await vi.waitFor(() => expect(wrapper.find('h1').text()).toBe('No board under this link'));
 });
 
 it('keeps the picture when the network goes and says of when it is', async () => {

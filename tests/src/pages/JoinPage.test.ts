@@ -1,5 +1,8 @@
 import 'fake-indexeddb/auto';
 import { RouterView } from 'vue-router';
+// The route fetches both when first opened; here they stand before the first test's time runs.
+import '@/layouts/DoorLayout.vue';
+import '@/pages/JoinPage.vue';
 import { afterEach, beforeEach, expect, it, vi } from 'vitest';
 import { flushPromises } from '@vue/test-utils';
 import { json, plugIn, said, type SentRequest } from '../support/network';
@@ -7,6 +10,7 @@ import { mountApp } from '../support/mountApp';
 import { student } from '../support/samples';
 
 const card = { name: '11B', teacher_word: 'plumb', benches: [{ bench: 3, people: 2 }] };
+const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/;
 let sent: SentRequest[];
 let takes = true;
 beforeEach(() => {
@@ -21,7 +25,10 @@ beforeEach(() => {
   });
 });
 let close: () => void = () => undefined;
-afterEach(() => close());
+afterEach(() => {
+  vi.restoreAllMocks();
+  close();
+});
 async function mountAt(path: string) {
   const { wrapper, router } = mountApp(RouterView);
   close = () => wrapper.unmount();
@@ -46,7 +53,41 @@ it('bench and nickname join, and the PIN is shown', async () => {
   await page.get('form').trigger('submit');
   await vi.waitFor(() => expect(page.text()).toContain('Write this PIN down'));
   expect(page.text()).toContain('204');
-  expect(sentTo('/api/join')[0]!.body).toEqual({ code: 'K4R7MP', bench: 7, nickname: 'Kite' });
+  expect(sentTo('/api/join')[0]!.body).toEqual({
+    code: 'K4R7MP',
+    bench: 7,
+    nickname: 'Kite',
+    join_id: expect.stringMatching(UUID) as string,
+  });
+});
+
+it('a joining sent again because its answer was lost has the same id, another nickname another', async () => {
+  takes = false;
+  const page = await mountAt('/join/K4R7MP');
+  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await page.get('input[value="7"]').setValue();
+  for (const [i, name] of ['Kite', 'Kite', 'Wren', 'Kite'].entries()) {
+    await page.get('input[maxlength="24"]').setValue(name);
+    await page.get('form').trigger('submit');
+    await vi.waitFor(() => expect(sentTo('/api/join')).toHaveLength(i + 1));
+    await vi.waitFor(() => expect(page.text()).toContain('Bench 7 has a Kite.'));
+  }
+  const [first, again, other, back] = sentTo('/api/join').map(({ body }) => (body as { join_id: string }).join_id);
+  expect([again, back]).toEqual([first, first]);
+  expect(other).not.toBe(first);
+});
+
+it('the PIN is shown though the phone cannot keep who joined', async () => {
+  const page = await mountAt('/join/K4R7MP');
+  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await page.get('input[value="7"]').setValue();
+  await page.get('input[maxlength="24"]').setValue('Kite');
+  vi.spyOn(IDBObjectStore.prototype, 'put').mockImplementation(() => {
+    throw new DOMException('no room is left', 'QuotaExceededError');
+  });
+  await page.get('form').trigger('submit');
+  await vi.waitFor(() => expect(page.find('[role="alert"]').exists()).toBe(true));
+  expect(page.get('.pin-card__pin').text()).toContain('204');
 });
 
 it('a taken name is said beside the field, and what was typed stays', async () => {

@@ -3,7 +3,7 @@ import { IDBFactory } from 'fake-indexeddb';
 import { Dexie } from 'dexie';
 import { createPinia, setActivePinia } from 'pinia';
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
-import { rawRun, student } from '../support/samples';
+import { JOIN_ID, rawRun, student } from '../support/samples';
 import { json, page, plugIn, said, type Wire } from '../support/network';
 
 const ann = student(1);
@@ -33,7 +33,8 @@ const joinAs =
     if (path === '/api/sign-out') return json({ done: true });
     return json({ me });
   };
-const body = { code: 'K4R7MP', bench: 1, nickname: 'Bob 1' };
+const place = { code: 'K4R7MP', bench: 1, nickname: 'Bob 1' };
+const body = { ...place, join_id: JOIN_ID };
 
 beforeEach(() => {
   const factory = new IDBFactory();
@@ -112,7 +113,7 @@ describe('R8: a shared phone', () => {
     await session.signOut();
 
     plugIn((path) => (path === '/api/return' ? json({ me: ann }) : joinAs(ann)(path, {})));
-    await session.comeBack({ ...body, pin: PIN }, true);
+    await session.comeBack({ ...place, pin: PIN }, true);
     expect(await session.store!.runs.toArray()).toMatchObject([{ id: row.id, state: 'waiting' }]);
   });
 

@@ -201,6 +201,21 @@ describe('R5: one bad item does not block', () => {
     });
   });
 
+  it('edits of a refused run are set aside with its reason, those made afterwards too', async () => {
+    const run = await addRun(store, rawRun(), NOWHERE);
+    const edits = [await addEdit(store, rawEdit(run.id, { kind: 'set_swings', swings: 21 }))];
+    plugIn(
+      answering((_path, init) =>
+        json(syncAnswer(itemsOf(init).map((item) => turnedDown(item.type === 'run' ? 'refused' : 'later', item)))),
+      ),
+    );
+    expect((await round()).kind).toBe('done');
+    edits.push(await addEdit(store, rawEdit(run.id, { kind: 'note', text: 'windy' })));
+    expect((await round()).kind).toBe('done');
+    for (const { id } of edits)
+      expect(await store.edits.get(id)).toMatchObject({ state: 'refused', refusal: { code: 'not_yours' } });
+  });
+
   it('an item to be tried later waits and does not keep the round going', async () => {
     await addRun(store, rawRun(), NOWHERE);
     const sent = plugIn(answering((_path, init) => json(syncAnswer(itemsOf(init).map((i) => turnedDown('later', i))))));
