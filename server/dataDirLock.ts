@@ -14,8 +14,9 @@ export async function lockDataDir(dataDir: string): Promise<() => Promise<void>>
   await once(database, 'open');
   try {
     await execute(database, 'PRAGMA busy_timeout = 0; BEGIN EXCLUSIVE');
-  } catch {
+  } catch (error) {
     await close(database);
+    if ((error as NodeJS.ErrnoException).code !== 'SQLITE_BUSY') throw error;
     throw new ConfigError(
       `${dataDir} is in use by a running Swaymark server. Stop it first, or give another DATA_DIR.`,
     );

@@ -9,5 +9,6 @@ export const createLog = (config: Config): Logger =>
 function errorForLog(error: unknown) {
   if (!(error instanceof Error)) return { message: String(error) };
   const { name, message, stack } = error;
-  return { name, code: (error as NodeJS.ErrnoException).code, message, stack };
+  const { code, responseCode } = error as { code?: string; responseCode?: number };
+  return { name, code, responseCode, message, stack };
 }

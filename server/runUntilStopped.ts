@@ -1,8 +1,10 @@
 import { ConfigError } from './config';
+import { keepFilesPrivate } from './keepFilesPrivate';
 import type { RunningServer } from './start';
 
 /** Starts a server for a process of its own: stops it on SIGTERM or SIGINT, and tells in words why it could not start. */
 export async function runUntilStopped(start: () => Promise<RunningServer>): Promise<void> {
+  keepFilesPrivate();
   let server: RunningServer;
   try {
     server = await start();
@@ -27,5 +29,5 @@ function whatIsWrong(error: unknown): string {
   const { code, port, message, stack } = error as NodeJS.ErrnoException & { port?: number };
   if (code === 'EADDRINUSE') return `Port ${port} is in use. Stop what uses it, or set PORT to another.`;
   if (error instanceof ConfigError) return message;
-  return stack ?? message;
+  return `${message}\n${stack ?? ''}`;
 }

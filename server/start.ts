@@ -18,6 +18,7 @@ import { createBackgroundJobs } from './services/backgroundJobs';
 import { createHasher } from './services/hasher';
 import { createOpenTries } from './services/openTries';
 import { createTryCounter } from './services/tryCounter';
+import { whyNotStarted } from './whyNotStarted';
 
 export interface RunningServer {
   /** Where it listens. */
@@ -31,9 +32,7 @@ export interface RunningServer {
 const FINISH_WITHIN_MS = 3_000;
 
 export async function startServer(config: Config, now: () => number = Date.now): Promise<RunningServer> {
-  mkdirSync(config.dataDir, { recursive: true, mode: 0o700 });
-  const unlock = await lockDataDir(config.dataDir);
-  const deps = await createDeps(config, now);
+  const { deps, unlock } = await openDataDir(config, now);
   const server = listener(config, createApp(deps));
   const port = await listen(server, config);
   const scheme = config.tls ? 'https' : 'http';
@@ -45,6 +44,18 @@ export async function startServer(config: Config, now: () => number = Date.now):
     deps,
     stop: () => (stopped ??= stop(server, deps).finally(unlock)),
   };
+}
+
+async function openDataDir(config: Config, now: () => number) {
+  let unlock: (() => Promise<void>) | undefined;
+  try {
+    mkdirSync(config.dataDir, { recursive: true, mode: 0o700 });
+    unlock = await lockDataDir(config.dataDir);
+    return { deps: await createDeps(config, now), unlock };
+  } catch (error) {
+    await unlock?.();
+    throw whyNotStarted(error, config.dataDir);
+  }
 }
 
 async function createDeps(config: Config, now: () => number): Promise<Deps> {

@@ -17,15 +17,15 @@ export interface MailSink {
 export async function startMailSink(dataDir: string): Promise<MailSink> {
   const folder = mailFolder(dataDir);
   await mkdir(folder, { recursive: true });
-  let kept = (await keptMails(dataDir)).length;
+  let last = Math.max(0, ...(await mailNames(dataDir)).map((name) => Number.parseInt(name, 10)));
   const smtp = new SMTPServer({
     authOptional: true,
     disabledCommands: ['STARTTLS', 'AUTH'],
     onData(stream, _session, done) {
       buffer(stream)
         .then(async (mail) => {
-          kept += 1;
-          const file = join(folder, `${String(kept).padStart(4, '0')}.eml`);
+          last += 1;
+          const file = join(folder, `${String(last).padStart(4, '0')}.eml`);
           await writeFile(`${file}.part`, mail, { mode: 0o600 });
           await rename(`${file}.part`, file);
         })
@@ -43,8 +43,9 @@ export async function startMailSink(dataDir: string): Promise<MailSink> {
 
 /** Texts of the mails kept so far, oldest first. */
 export async function keptMails(dataDir: string): Promise<string[]> {
-  const names = (await readdir(mailFolder(dataDir))).filter((name) => name.endsWith('.eml')).sort();
-  return Promise.all(names.map((name) => readFile(join(mailFolder(dataDir), name), 'utf8')));
+  return Promise.all((await mailNames(dataDir)).map((name) => readFile(join(mailFolder(dataDir), name), 'utf8')));
 }
 
+const mailNames = async (dataDir: string) =>
+  (await readdir(mailFolder(dataDir))).filter((name) => /^\d+\.eml$/.test(name)).sort();
 const mailFolder = (dataDir: string) => join(dataDir, 'mail');

@@ -1,4 +1,4 @@
-import { chmodSync, existsSync, readFileSync, writeFileSync } from 'node:fs';
+import { chmodSync, existsSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs';
 import { randomBytes } from 'node:crypto';
 import { once } from 'node:events';
 import { join } from 'node:path';
@@ -6,7 +6,7 @@ import connectSqlite3 from 'connect-sqlite3';
 import type { RequestHandler } from 'express';
 import session from 'express-session';
 import sqlite3 from 'sqlite3';
-import type { Config } from '../config';
+import { isLongSecret, type Config } from '../config';
 import { SIGN_IN_LIMITS } from '../services/signIns';
 
 declare module 'express-session' {
@@ -35,7 +35,7 @@ export async function openSessions(config: Config): Promise<Sessions> {
     cookieName,
     middleware: session({
       name: cookieName,
-      secret: config.sessionSecret ?? keptSecret(config.dataDir),
+      secret: config.sessionSecrets ?? keptSecret(config.dataDir),
       store,
       resave: false,
       saveUninitialized: false,
@@ -75,15 +75,24 @@ class SessionStore extends connectSqlite3(session) {
 function readSession(text: unknown): session.SessionData | null {
   try {
     const found = JSON.parse(String(text)) as session.SessionData | null;
-    return typeof found?.cookie === 'object' && found.cookie !== null ? found : null;
+    const isWhole = typeof found?.cookie === 'object' && found.cookie !== null;
+    return isWhole && ['string', 'undefined'].includes(typeof found.signInId) ? found : null;
   } catch {
     return null;
   }
 }
 
-/** Made once and kept readable by the server's user alone, so that a restart signs nobody out. */
+/**
+ * Made once and kept readable by the server's user alone, so that a restart signs nobody out. What a
+ * power cut may have left of the file counts as none: an empty secret would let anybody sign a cookie.
+ */
 function keptSecret(dataDir: string): string {
   const file = join(dataDir, 'session-secret');
-  if (!existsSync(file)) writeFileSync(file, randomBytes(48).toString('base64url'), { mode: 0o600, flag: 'wx' });
-  return readFileSync(file, 'utf8').trim();
+  const kept = existsSync(file) ? readFileSync(file, 'utf8').trim() : '';
+  if (isLongSecret(kept)) return kept;
+  const made = randomBytes(48).toString('base64url');
+  rmSync(`${file}.part`, { force: true });
+  writeFileSync(`${file}.part`, made, { mode: 0o600, flush: true });
+  renameSync(`${file}.part`, file);
+  return made;
 }

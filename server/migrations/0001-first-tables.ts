@@ -22,6 +22,7 @@ const TABLES = [
     email TEXT,
     role TEXT CHECK (role IN ('volunteer', 'teacher', 'coordinator')),
     account_id TEXT REFERENCES staff_accounts (id),
+    invited_by TEXT REFERENCES staff_accounts (id),
     created_ms INTEGER NOT NULL,
     expires_ms INTEGER NOT NULL,
     used_ms INTEGER)`,
@@ -41,6 +42,7 @@ const TABLES = [
     nickname TEXT NOT NULL,
     nickname_key TEXT NOT NULL,
     pin_hash TEXT NOT NULL,
+    join_id TEXT NOT NULL UNIQUE,
     created_ms INTEGER NOT NULL,
     UNIQUE (class_id, bench, nickname_key))`,
   `CREATE TABLE sign_ins (

@@ -16,6 +16,7 @@ export class StaffToken extends Model<InferAttributes<StaffToken>, InferCreation
   declare email: CreationOptional<string | null>;
   declare role: CreationOptional<StaffRole | null>;
   declare account_id: CreationOptional<string | null>;
+  declare invited_by: CreationOptional<string | null>;
   declare created_ms: number;
   declare expires_ms: number;
   declare used_ms: CreationOptional<number | null>;
@@ -30,6 +31,7 @@ export const defineStaffToken = (sequelize: Sequelize) =>
       email: DataTypes.TEXT,
       role: DataTypes.TEXT,
       account_id: DataTypes.TEXT,
+      invited_by: DataTypes.TEXT,
       created_ms: DataTypes.INTEGER,
       expires_ms: DataTypes.INTEGER,
       used_ms: DataTypes.INTEGER,

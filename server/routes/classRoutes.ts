@@ -1,10 +1,10 @@
 import { z } from 'zod';
-import { ClassAnswer, ClassesAnswer, NewClassRequest, NewPinAnswer } from '@shared/schemas/accounts';
+import { ClassAnswer, ClassesAnswer, DoneAnswer, NewClassRequest, NewPinAnswer } from '@shared/schemas/accounts';
 import { Uuid } from '@shared/schemas/common';
 import type { StaffActor } from '../policies/actor';
 import { presentClass } from '../presenters/classView';
 import { createClass, listClasses, renewBoardPass, renewCode, seeClass } from '../services/classes';
-import { renewPin } from '../services/students';
+import { removeStudent, renewPin } from '../services/students';
 import { route } from './route';
 
 const ById = z.strictObject({ id: Uuid });
@@ -70,5 +70,17 @@ export const classRoutes = [
     params: ById,
     answer: NewPinAnswer,
     handler: async ({ deps, actor, scope, params }) => ({ pin: await renewPin(deps, actor, scope, params.id) }),
+  }),
+  route({
+    method: 'delete',
+    path: '/api/students/:id',
+    action: 'student.remove',
+    summary: 'Take out a student who has handed nothing in',
+    params: ById,
+    answer: DoneAnswer,
+    async handler({ deps, actor, scope, params }) {
+      await removeStudent(deps, actor, scope, params.id);
+      return { done: true as const };
+    },
   }),
 ];

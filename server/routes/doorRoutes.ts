@@ -12,8 +12,10 @@ import {
   SetUpRequest,
   SignInRequest,
 } from '@shared/schemas/accounts';
+import { addressOf } from '../middleware/limitTries';
 import { endSession, startSession } from '../middleware/startSession';
 import { presentMe, presentStaff, presentStudent } from '../presenters/me';
+import { joinClass } from '../services/joinClass';
 import { passwordNotMatched, pinNotMatched } from '../services/signIns';
 import {
   acceptInvite,
@@ -22,7 +24,7 @@ import {
   sendResetLink,
   setUpFirstCoordinator,
 } from '../services/staffAccounts';
-import { checkPin, classCard, findClassByCode, joinClass, pinAccount } from '../services/students';
+import { checkPin, classCard, findClassByCode, pinAccount } from '../services/students';
 import { route } from './route';
 
 /** Everything a person does to come in, and to leave. */
@@ -41,12 +43,16 @@ export const doorRoutes = [
     method: 'post',
     path: '/api/join',
     action: 'class.join',
-    summary: 'Join a class at a bench; the PIN is given once, here',
+    summary: 'Join a class at a bench; the PIN is given once, here, and anew when the same join is sent again',
     body: JoinRequest,
     answer: JoinAnswer,
     limitTries: {},
     async handler({ deps, body, http }) {
-      const { student, schoolClass, pin } = await joinClass(deps, body);
+      const giveBack = deps.tries.joins.take(`${body.code} ${addressOf(http.req)}`);
+      const { student, schoolClass, pin } = await joinClass(deps, body).catch((error: unknown) => {
+        giveBack();
+        throw error;
+      });
       await startSession(deps, http.req, { kind: 'student', student });
       return { me: presentStudent(student, schoolClass), pin };
     },

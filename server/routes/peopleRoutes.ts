@@ -1,8 +1,16 @@
 import { z } from 'zod';
-import { DoneAnswer, InviteAnswer, InviteRequest, PeopleAnswer } from '@shared/schemas/accounts';
+import { DoneAnswer, InviteAnswer, InviteRequest, PeopleAnswer, ResetLinkAnswer } from '@shared/schemas/accounts';
 import { Uuid } from '@shared/schemas/common';
+import type { StaffActor } from '../policies/actor';
 import { presentInvite, presentStaffMember } from '../presenters/people';
-import { disablePerson, enablePerson, invite, listPeople, withdrawInvite } from '../services/people';
+import {
+  disablePerson,
+  enablePerson,
+  invite,
+  listPeople,
+  sendColleagueResetLink,
+  withdrawInvite,
+} from '../services/people';
 import { route } from './route';
 
 const ById = z.strictObject({ id: Uuid });
@@ -28,7 +36,7 @@ export const peopleRoutes = [
     body: InviteRequest,
     answer: InviteAnswer,
     async handler({ deps, actor, body }) {
-      const made = await invite(deps, actor, body);
+      const made = await invite(deps, actor as StaffActor, body);
       return { invite: presentInvite(made.invite), link: made.link };
     },
   }),
@@ -67,5 +75,16 @@ export const peopleRoutes = [
       await enablePerson(deps, actor, params.id);
       return DONE;
     },
+  }),
+  route({
+    method: 'post',
+    path: '/api/people/:id/reset-link',
+    action: 'people.reset_link',
+    summary: 'Give a colleague a link to choose a new password: by mail, or in the answer when no e-mail is set up',
+    params: ById,
+    answer: ResetLinkAnswer,
+    handler: async ({ deps, actor, params }) => ({
+      link: await sendColleagueResetLink(deps, actor as StaffActor, params.id),
+    }),
   }),
 ];

@@ -9,9 +9,9 @@ import type { SchoolClass } from '../models/SchoolClass';
 import type { SignedIn, StaffActor, StudentActor } from '../policies/actor';
 import { createClass } from '../services/classes';
 import { handIn } from '../services/intake/handIn';
+import { joinClass } from '../services/joinClass';
 import { acceptInvite, createSetUpLink, setUpFirstCoordinator } from '../services/staffAccounts';
 import { createToken } from '../services/staffTokens';
-import { joinClass } from '../services/students';
 import { bar, gateRun, keyedSplits, keyedTotal, tappedRun, type Scene } from './demoRuns';
 import { createRandom } from './random';
 
@@ -140,7 +140,12 @@ async function createBenches(deps: Deps, blue: SchoolClass, north: SchoolClass) 
   ];
   const benches: { actor: StudentActor; pin: string }[] = [];
   for (const [schoolClass, bench, nickname] of places) {
-    const { student, pin } = await joinClass(deps, { code: schoolClass.code, bench, nickname });
+    const { student, pin } = await joinClass(deps, {
+      join_id: uuidv7(),
+      code: schoolClass.code,
+      bench,
+      nickname,
+    });
     benches.push({ actor: { kind: 'student', id: student.id, signInId: '', student, schoolClass }, pin });
   }
   return benches;

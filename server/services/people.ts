@@ -1,13 +1,15 @@
-import { Op } from 'sequelize';
+import { Op, type Transaction } from 'sequelize';
 import type { StaffRole } from '@shared/schemas/accounts';
 import type { Deps } from '../deps';
-import { AppError, notFound } from '../errors';
-import { inviteLetter } from '../mail/letters';
+import { AppError, notFound, notSignedIn } from '../errors';
+import { inviteLetter, resetLetter } from '../mail/letters';
+import type { Mail } from '../mail/mailer';
 import type { StaffAccount } from '../models/StaffAccount';
 import type { StaffToken } from '../models/StaffToken';
-import type { Actor } from '../policies/actor';
+import type { Actor, StaffActor } from '../policies/actor';
 import { noteActivity } from './activity';
 import { revokeAllSignIns } from './signIns';
+import { createResetLink } from './staffAccounts';
 import { createToken, dropTokens, openTokens } from './staffTokens';
 
 /** What a coordinator does with staff. */
@@ -23,32 +25,64 @@ export async function listPeople(deps: Deps): Promise<{ staff: StaffAccount[]; i
 /** Mails an invitation; an earlier one to the same address stops working. */
 export async function invite(
   deps: Deps,
-  actor: Actor,
+  actor: StaffActor,
   wanted: { email: string; role: StaffRole },
 ): Promise<{ invite: StaffToken; link: string | null }> {
   const { token, row } = await deps.database.writeTransaction(async (transaction) => {
+    await refuseIfShut(deps, actor, transaction);
     if (await deps.database.models.StaffAccount.findOne({ where: { email: wanted.email }, transaction })) {
       throw new AppError(409, 'already_staff', 'This e-mail address has an account already.');
     }
     await dropTokens(deps, { purpose: 'invite', email: wanted.email }, transaction);
-    const made = await createToken(deps, { purpose: 'invite', ...wanted }, transaction);
+    const made = await createToken(deps, { purpose: 'invite', ...wanted, invited_by: actor.id }, transaction);
     await noteActivity(deps, actor, 'people.invite', made.row.id, transaction);
     return made;
   });
   const link = `${deps.publicUrl}/invite/${token}`;
   if (!deps.mailer.sends) return { invite: row, link };
   try {
-    await deps.mailer.send(inviteLetter(wanted.email, wanted.role, link));
+    await sendOrTell(deps, inviteLetter(wanted.email, wanted.role, link));
   } catch (error) {
-    deps.log.error({ err: error }, 'an invitation could not be mailed');
     await withdrawInvite(deps, actor, row.id);
+    throw error;
+  }
+  return { invite: row, link: null };
+}
+
+/** Mails a colleague a link to choose a new password, or gives it to the coordinator when no e-mail is set up. */
+export async function sendColleagueResetLink(deps: Deps, actor: StaffActor, id: string): Promise<string | null> {
+  const { account, link } = await deps.database.writeTransaction(async (transaction) => {
+    await refuseIfShut(deps, actor, transaction);
+    const account = await deps.database.models.StaffAccount.findByPk(id, { transaction });
+    if (!account) throw notFound('This person');
+    if (account.disabled_ms !== null) {
+      throw new AppError(409, 'account_shut', 'This account is shut. Open it again, then make the link.');
+    }
+    await noteActivity(deps, actor, 'people.reset_link', id, transaction);
+    return { account, link: await createResetLink(deps, id, transaction) };
+  });
+  if (!deps.mailer.sends) return link;
+  await sendOrTell(deps, resetLetter(account.email, link));
+  return null;
+}
+
+async function sendOrTell(deps: Deps, mail: Mail): Promise<void> {
+  try {
+    await deps.mailer.send(mail);
+  } catch (error) {
+    deps.log.error({ err: error }, 'a mail could not be sent');
     throw new AppError(
       502,
       'mail_not_sent',
-      'The mail server did not take the invitation. Check the e-mail set-up, then invite again.',
+      'The mail server did not take the mail. Check the e-mail set-up, then try again.',
     );
   }
-  return { invite: row, link: null };
+}
+
+/** The actor was read before this transaction: an account shut since then makes no more links. */
+async function refuseIfShut({ database }: Deps, actor: StaffActor, transaction: Transaction): Promise<void> {
+  const account = await database.models.StaffAccount.findByPk(actor.id, { transaction });
+  if (account?.disabled_ms !== null) throw notSignedIn();
 }
 
 export async function withdrawInvite(deps: Deps, actor: Actor, id: string): Promise<void> {
@@ -63,7 +97,7 @@ export async function withdrawInvite(deps: Deps, actor: Actor, id: string): Prom
   });
 }
 
-/** Shuts an account and ends all its sign-ins. The last coordinator stays: somebody must be able to let others in. */
+/** Shuts an account and ends all its sign-ins, reset links and the invitations it made. The last coordinator stays: somebody must be able to let others in. */
 export async function disablePerson(deps: Deps, actor: Actor, id: string): Promise<void> {
   const { StaffAccount } = deps.database.models;
   await deps.database.writeTransaction(async (transaction) => {
@@ -84,6 +118,7 @@ export async function disablePerson(deps: Deps, actor: Actor, id: string): Promi
     await account.update({ disabled_ms: deps.now() }, { transaction });
     await revokeAllSignIns(deps, id, transaction);
     await dropTokens(deps, { purpose: 'reset', account_id: id }, transaction);
+    await dropTokens(deps, { purpose: 'invite', invited_by: id }, transaction);
     await noteActivity(deps, actor, 'people.disable', id, transaction);
   });
 }

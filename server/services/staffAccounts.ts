@@ -7,7 +7,7 @@ import { resetLetter } from '../mail/letters';
 import type { StaffAccount } from '../models/StaffAccount';
 import { isCommonPassword } from './commonPasswords';
 import { revokeAllSignIns } from './signIns';
-import { createToken, dropTokens, useToken } from './staffTokens';
+import { createToken, dropTokens, findToken, useToken } from './staffTokens';
 
 /** Accounts of staff: how they come to be, how they sign in, how a password is chosen anew. */
 
@@ -39,7 +39,8 @@ export async function acceptInvite(
   deps: Deps,
   wanted: { token: string; name: string; password: string },
 ): Promise<StaffAccount> {
-  const passwordHash = await hashNewPassword(deps, wanted.password, [wanted.name]);
+  const { email: invited } = await findToken(deps, 'invite', wanted.token);
+  const passwordHash = await hashNewPassword(deps, wanted.password, [wanted.name, invited!]);
   return deps.database.writeTransaction(async (transaction) => {
     const invite = await useToken(deps, 'invite', wanted.token, transaction);
     const { email, role } = invite;
@@ -77,23 +78,27 @@ export async function sendResetLink(deps: Deps, email: string): Promise<void> {
     deps.log.warn({ account: account.id }, 'a new password was asked for, but no e-mail is set up (SMTP_URL)');
     return;
   }
-  const { token } = await deps.database.writeTransaction(async (transaction) => {
-    await dropTokens(deps, { purpose: 'reset', account_id: account.id }, transaction);
-    return createToken(deps, { purpose: 'reset', account_id: account.id }, transaction);
-  });
-  await deps.mailer.send(resetLetter(email, `${deps.publicUrl}/reset/${token}`));
+  const link = await deps.database.writeTransaction((transaction) => createResetLink(deps, account.id, transaction));
+  await deps.mailer.send(resetLetter(email, link));
 }
 
-/** Sets the new password and signs the account out everywhere. It does not sign in. */
+/** One more link to choose a new password. Those before stay good until one is used: mails may come late and in any order. */
+export async function createResetLink(deps: Deps, account_id: string, transaction: Transaction): Promise<string> {
+  const { token } = await createToken(deps, { purpose: 'reset', account_id }, transaction);
+  return `${deps.publicUrl}/reset/${token}`;
+}
+
+/** Sets the new password, ends the account's other reset links and signs it out everywhere. It does not sign in. */
 export async function resetPassword(deps: Deps, token: string, password: string): Promise<void> {
-  const passwordHash = await hashNewPassword(deps, password, []);
+  const { StaffAccount } = deps.database.models;
+  const { account_id } = await findToken(deps, 'reset', token);
+  const { id, name, email } = (await StaffAccount.findByPk(account_id!))!;
+  const password_hash = await hashNewPassword(deps, password, [name, email]);
   await deps.database.writeTransaction(async (transaction) => {
-    const { account_id } = await useToken(deps, 'reset', token, transaction);
-    await deps.database.models.StaffAccount.update(
-      { password_hash: passwordHash },
-      { where: { id: account_id! }, transaction },
-    );
-    await revokeAllSignIns(deps, account_id!, transaction);
+    await useToken(deps, 'reset', token, transaction);
+    await dropTokens(deps, { purpose: 'reset', account_id: id }, transaction);
+    await StaffAccount.update({ password_hash }, { where: { id }, transaction });
+    await revokeAllSignIns(deps, id, transaction);
   });
 }
 

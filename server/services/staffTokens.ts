@@ -15,7 +15,7 @@ const DAY_MS = 86_400_000;
  */
 const LIFE_MS = { set_up: 7 * DAY_MS, invite: 7 * DAY_MS, reset: 30 * MINUTE_MS } as const;
 
-type Bound = Pick<StaffToken, 'purpose'> & Partial<Pick<StaffToken, 'email' | 'role' | 'account_id'>>;
+type Bound = Pick<StaffToken, 'purpose'> & Partial<Pick<StaffToken, 'email' | 'role' | 'account_id' | 'invited_by'>>;
 
 export async function createToken(
   { database, now }: Deps,
@@ -39,10 +39,21 @@ export async function createToken(
 
 /** Uses up a token, once: of two requests at a time the second finds it used. */
 export async function useToken(
-  { database, now }: Deps,
+  deps: Deps,
   purpose: StaffToken['purpose'],
   token: string,
   transaction: Transaction,
+): Promise<StaffToken> {
+  const row = await findToken(deps, purpose, token, transaction);
+  return row.update({ used_ms: deps.now() }, { transaction });
+}
+
+/** What an open token is bound to. It stays open. */
+export async function findToken(
+  { database, now }: Deps,
+  purpose: StaffToken['purpose'],
+  token: string,
+  transaction?: Transaction,
 ): Promise<StaffToken> {
   const row = await database.models.StaffToken.findOne({
     where: { purpose, token_hash: tokenHash(token), used_ms: { [Op.is]: null }, expires_ms: { [Op.gt]: now() } },
@@ -51,7 +62,6 @@ export async function useToken(
   if (!row) {
     throw new AppError(410, 'link_used_up', 'This link has been used, replaced or has run out. Ask for a new one.');
   }
-  await row.update({ used_ms: now() }, { transaction });
   return row;
 }
 

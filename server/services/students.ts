@@ -1,4 +1,3 @@
-import { randomUUID } from 'node:crypto';
 import type { ClassCard } from '@shared/schemas/accounts';
 import type { Deps } from '../deps';
 import { AppError, notFound } from '../errors';
@@ -12,9 +11,6 @@ import { newPin } from './secrets';
 import { revokeAllSignIns } from './signIns';
 
 /** Students: a class code, a bench and a nickname, and a PIN to come back with. */
-
-/** People one class may hold: a bound on what a leaked code can fill. */
-const MAX_STUDENTS = 400;
 
 export async function findClassByCode({ database }: Deps, code: string): Promise<SchoolClass> {
   const schoolClass = await database.models.SchoolClass.findOne({ where: { code } });
@@ -30,40 +26,6 @@ export async function classCard({ database }: Deps, schoolClass: SchoolClass): P
     [schoolClass.id],
   );
   return { name: schoolClass.name, teacher_word: schoolClass.teacher_word, benches };
-}
-
-/** The only time the PIN is known: from here on there is its hash. */
-export async function joinClass(
-  deps: Deps,
-  wanted: { code: string; bench: number; nickname: string },
-): Promise<{ student: Student; schoolClass: SchoolClass; pin: string }> {
-  const schoolClass = await findClassByCode(deps, wanted.code);
-  const pin = newPin();
-  const pinHash = await deps.hasher.hash(pin);
-  const { Student } = deps.database.models;
-  const student = await deps.database.writeTransaction(async (transaction) => {
-    const where = { class_id: schoolClass.id, bench: wanted.bench, nickname_key: nicknameKey(wanted.nickname) };
-    if (await Student.findOne({ where, transaction })) {
-      throw new AppError(
-        409,
-        'nickname_taken',
-        `Somebody at bench ${wanted.bench} is called that already. If it is you, come back with your PIN; if not, take another nickname.`,
-        [{ path: 'nickname', message: 'this nickname is taken at this bench' }],
-      );
-    }
-    if ((await Student.count({ where: { class_id: schoolClass.id }, transaction })) >= MAX_STUDENTS) {
-      throw new AppError(
-        409,
-        'class_full',
-        `This class has ${MAX_STUDENTS} people, which is all it can hold. Tell the teacher.`,
-      );
-    }
-    return Student.create(
-      { id: randomUUID(), ...where, nickname: wanted.nickname, pin_hash: pinHash, created_ms: deps.now() },
-      { transaction },
-    );
-  });
-  return { student, schoolClass, pin };
 }
 
 /** The student who has this PIN, or undefined after as long a wait when there is no such class or nickname. */
@@ -88,9 +50,8 @@ export const pinAccount = ({ code, bench, nickname }: { code: string; bench: num
 
 /** A new PIN for a student who lost the old one, good at once. Devices signed in with the old one are signed out. */
 export async function renewPin(deps: Deps, actor: Actor, scope: Scope, studentId: string): Promise<string> {
-  const student = await deps.database.models.Student.findByPk(studentId);
-  if (!student) throw notFound('This student');
-  const { code } = await classInScope(deps, actor, scope, student.class_id, 'This student');
+  const { student, schoolClass } = await studentInScope(deps, actor, scope, studentId);
+  const { code } = schoolClass;
   const pin = newPin();
   const pinHash = await deps.hasher.hash(pin);
   await deps.database.writeTransaction(async (transaction) => {
@@ -100,4 +61,36 @@ export async function renewPin(deps: Deps, actor: Actor, scope: Scope, studentId
   });
   deps.tries.byAccount.forget(pinAccount({ code, bench: student.bench, nickname: student.nickname }));
   return pin;
+}
+
+/** Takes out somebody who handed nothing in. Whoever did stays: runs and edits keep their author. */
+export async function removeStudent(deps: Deps, actor: Actor, scope: Scope, studentId: string): Promise<void> {
+  const { student } = await studentInScope(deps, actor, scope, studentId);
+  const { Edit, Run } = deps.database.models;
+  await deps.database.writeTransaction(async (transaction) => {
+    const handedIn =
+      (await Run.count({ where: { owner_id: student.id }, transaction })) +
+      (await Edit.count({ where: { author_id: student.id }, transaction }));
+    if (handedIn > 0) {
+      throw new AppError(
+        409,
+        'student_has_runs',
+        'This student has handed in work, which is kept with its author. A new PIN shuts others out.',
+      );
+    }
+    await revokeAllSignIns(deps, student.id, transaction);
+    await student.destroy({ transaction });
+    await noteActivity(deps, actor, 'student.remove', student.id, transaction);
+  });
+}
+
+async function studentInScope(
+  deps: Deps,
+  actor: Actor,
+  scope: Scope,
+  id: string,
+): Promise<{ student: Student; schoolClass: SchoolClass }> {
+  const student = await deps.database.models.Student.findByPk(id);
+  if (!student) throw notFound('This student');
+  return { student, schoolClass: await classInScope(deps, actor, scope, student.class_id, 'This student') };
 }

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { Bench, Line, Uuid, WallMs } from './common';
+import { hasInvisibleSigns } from './invisibleSigns';
 import { MAX_BENCH } from './limits';
 
 /** People, classes and signing in. */
@@ -19,7 +20,9 @@ export const ClassCode = z
       .string()
       .regex(new RegExp(`^[${CLASS_CODE_ALPHABET}]{6}$`), 'a class code has six letters or digits, like K4R7MP'),
   );
-export const Nickname = Line.min(1, 'a nickname or roster number is needed').max(24);
+export const Nickname = Line.min(1, 'a nickname or roster number is needed')
+  .max(24)
+  .refine((typed) => !hasInvisibleSigns(typed), 'there is a sign in it that cannot be seen: type it anew');
 export const Pin = z.string().regex(/^\d{6}$/, 'a PIN has six digits');
 export const Email = z
   .string()
@@ -50,7 +53,8 @@ export const ClassCard = z.strictObject({
   benches: z.array(z.strictObject({ bench: Bench, people: z.int().min(1) })),
 });
 export type ClassCard = z.infer<typeof ClassCard>;
-export const JoinRequest = z.strictObject({ code: ClassCode, bench: Bench, nickname: Nickname });
+/** `join_id` is made once for one person's joining: sent again after a lost answer, it opens the same student. */
+export const JoinRequest = z.strictObject({ join_id: Uuid, code: ClassCode, bench: Bench, nickname: Nickname });
 /** The PIN is shown once, here. */
 export const JoinAnswer = z.strictObject({ me: Me, pin: Pin });
 export const ReturnRequest = z.strictObject({ code: ClassCode, bench: Bench, nickname: Nickname, pin: Pin });
@@ -78,6 +82,8 @@ export const PendingInvite = z.strictObject({ id: Uuid, email: z.string(), role:
 export type PendingInvite = z.infer<typeof PendingInvite>;
 /** `link` is given only when the server has no e-mail set up, for the coordinator to pass on by hand. */
 export const InviteAnswer = z.strictObject({ invite: PendingInvite, link: z.string().nullable() });
+/** `link` is null when it was mailed; else it is shown once, for the coordinator to pass on by hand. */
+export const ResetLinkAnswer = z.strictObject({ link: z.string().nullable() });
 export const NewPinAnswer = z.strictObject({ pin: Pin });
 export const PeopleAnswer = z.strictObject({ staff: z.array(StaffMember), invites: z.array(PendingInvite) });
 

@@ -62,6 +62,29 @@ test('with a new PIN the old one and the devices that used it are out', async ()
   if (pin !== student.pin) expect((await comeBack(student.pin)).status).toBe(401);
 });
 
+test('a student who has handed nothing in is taken out: signed out, the place free, and written down', async () => {
+  const made = await createClass(school.teacher);
+  const student = await joinStudent(server, made.code);
+  expect((await school.teacher.delete(`/api/students/${student.me.id}`)).body).toEqual({ done: true });
+  expect((await student.get('/api/me')).body).toEqual({ me: null });
+  expect(must(await school.teacher.get(`/api/classes/${made.id}`)).class.students).toEqual([]);
+  await joinStudent(server, made.code, student.bench, student.nickname);
+  const entry = await server.running.deps.database.models.ActivityEntry.findOne({
+    where: { action: 'student.remove', subject: student.me.id },
+  });
+  expect(entry?.actor_id).toBe(school.teacher.me.id);
+});
+
+test('a student who has handed something in stays, and the teacher is told what to do', async () => {
+  const made = await createClass(school.teacher);
+  const student = await joinStudent(server, made.code);
+  must(await student.post('/api/sync', batch([runItem()])));
+  const reply = await school.teacher.delete(`/api/students/${student.me.id}`);
+  expect([reply.status, reply.body.error.code]).toEqual([409, 'student_has_runs']);
+  expect(reply.body.error.message).toContain('A new PIN');
+  expect((await student.get('/api/me')).body.me.id).toBe(student.me.id);
+});
+
 test.each([
   ['no name', { name: '  ' }, 'name'],
   ['a name of 61 letters', { name: 'x'.repeat(61) }, 'name'],

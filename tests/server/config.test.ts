@@ -47,6 +47,16 @@ test.each([
   expect(() => readConfig({ [name]: text })).not.toThrow(text);
 });
 
+test('session secrets stand with commas between, the newest first, and each is long', () => {
+  const [newer, older] = ['n'.repeat(32), 'o'.repeat(40)];
+  expect(readConfig({ SESSION_SECRET: newer }).sessionSecrets).toEqual([newer]);
+  expect(readConfig({ SESSION_SECRET: `${newer}, ${older}` }).sessionSecrets).toEqual([newer, older]);
+  expect(readConfig({}).sessionSecrets).toBeNull();
+  for (const SESSION_SECRET of [`${newer},short`, `${newer},`]) {
+    expect(() => readConfig({ SESSION_SECRET })).toThrow('at least 32 characters');
+  }
+});
+
 test('every mistake is named at once', () => {
   expect(() => readConfig({ PORT: 'x', LOG_LEVEL: 'y' })).toThrow(/PORT.*\n.*LOG_LEVEL/);
 });

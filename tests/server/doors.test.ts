@@ -1,7 +1,8 @@
+import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { startServer, type TestServer } from '../support/startServer';
 import { createApiClient } from './helpers/apiClient';
-import { createSchool, joinStudent, PASSWORD, type School } from './helpers/people';
+import { createClass, createSchool, joinStudent, must, PASSWORD, type School } from './helpers/people';
 
 let server: TestServer;
 let school: School;
@@ -11,6 +12,7 @@ beforeAll(async () => {
 });
 afterAll(() => server.stop());
 const guest = () => createApiClient(server.url);
+const join = (body: object) => guest().post('/api/join', { join_id: randomUUID(), ...body });
 
 describe('POST /api/classes/look-up', () => {
   test('shows class name, teacher word and how many people are at each bench, no names', async () => {
@@ -54,14 +56,19 @@ describe('POST /api/join', () => {
   test('takes a nickname once per bench, whatever the case and spaces', async () => {
     const code = school.ownClass.code;
     await joinStudent(server, code, 3, 'Blue Wren');
-    const same = await guest().post('/api/join', { code, bench: 3, nickname: ' blue  WREN ' });
+    const same = await join({ code, bench: 3, nickname: ' blue  WREN ' });
     expect([same.status, same.body.error.code]).toEqual([409, 'nickname_taken']);
-    const elsewhere = await guest().post('/api/join', { code, bench: 4, nickname: 'Blue Wren' });
+    const elsewhere = await join({ code, bench: 4, nickname: 'Blue Wren' });
     expect(elsewhere.status).toBe(200);
+  });
+  test('takes two nicknames that differ in what cannot be seen for one', async () => {
+    const wanted = { code: school.ownClass.code, bench: 8 };
+    expect((await join({ ...wanted, nickname: '❤\ufe0f' })).status).toBe(200);
+    expect((await join({ ...wanted, nickname: '❤' })).body.error.code).toBe('nickname_taken');
   });
   test('of two at once with one nickname, one gets it', async () => {
     const wanted = { code: school.ownClass.code, bench: 5, nickname: 'Lynx' };
-    const replies = await Promise.all([guest().post('/api/join', wanted), guest().post('/api/join', wanted)]);
+    const replies = await Promise.all([join(wanted), join(wanted)]);
     expect(replies.map(({ status }) => status).sort()).toEqual([200, 409]);
   });
   test.each([
@@ -72,8 +79,15 @@ describe('POST /api/join', () => {
     ['a nickname with a NUL', { nickname: 'a\u0000b' }],
     ['a nickname that turns the line round', { nickname: 'a\u202eb' }],
     ['an unknown field', { role: 'teacher' }],
+    ['a nickname with a zero-width space', { nickname: 'Ot\u200bter' }],
+    ['a nickname with a joiner between letters', { nickname: 'Ot\u200dter' }],
+    ['a nickname with a soft hyphen', { nickname: 'Ot\u00adter' }],
+    ['a nickname of a Hangul filler', { nickname: '\u3164' }],
+    ['a nickname of an empty Braille pattern', { nickname: '\u2800' }],
+    ['a nickname with a tag after no flag', { nickname: 'Otter\u{e0061}' }],
+    ['no id of the join', { join_id: undefined }],
   ])('refuses %s and names the field', async (_what, change) => {
-    const reply = await guest().post('/api/join', {
+    const reply = await join({
       code: school.ownClass.code,
       bench: 1,
       nickname: 'Newt',
@@ -83,9 +97,68 @@ describe('POST /api/join', () => {
     expect(reply.body.error.fields[0].path).toBe(Object.keys(change)[0]);
     expect(reply.text.toLowerCase()).not.toMatch(/invalid|oops/);
   });
-  test('keeps a nickname in any script as it was typed', async () => {
-    const student = await joinStudent(server, school.ownClass.code, 6, "Zoë 🦊 'x");
-    expect((await student.get('/api/me')).body.me.nickname).toBe("Zoë 🦊 'x");
+  test.each(["Zoë 🦊 'x", '👩🏽‍🔬 Ada', '🏴󠁧󠁢󠁳󠁣󠁴󠁿 3', '❤️ 1️⃣', 'मीरा', '김수달'])(
+    'keeps the nickname %s as it was typed',
+    async (nickname) => {
+      const student = await joinStudent(server, school.ownClass.code, 6, nickname);
+      expect((await student.get('/api/me')).body.me.nickname).toBe(nickname);
+    },
+  );
+  test('takes twelve people at a bench and says where to go then', async () => {
+    const { code } = await createClass(school.teacher);
+    for (let i = 0; i < 12; i += 1) await joinStudent(server, code, 9, `Student ${i}`);
+    const over = await join({ code, bench: 9, nickname: 'Newt' });
+    expect([over.status, over.body.error.code, over.body.error.fields[0].path]).toEqual([409, 'bench_full', 'bench']);
+    expect((await join({ code, bench: 10, nickname: 'Newt' })).status).toBe(200);
+  });
+});
+
+describe('a join whose answer was lost', () => {
+  const wanted = async () => ({
+    join_id: randomUUID(),
+    code: (await createClass(school.teacher)).code,
+    bench: 1,
+    nickname: 'Otter',
+  });
+  test('is sent again and opens the same student with a PIN that works; the one nobody saw does not', async () => {
+    const body = await wanted();
+    const [lost, again] = [must(await join(body)), must(await join({ ...body, nickname: 'OTTER ' }))];
+    expect(again.me).toEqual(lost.me);
+    const comeBack = ({ pin }: { pin: string }) =>
+      guest().post('/api/return', { code: body.code, bench: 1, nickname: 'Otter', pin });
+    expect((await comeBack(again)).body.me.id).toBe(again.me.id);
+    if (lost.pin !== again.pin) expect((await comeBack(lost)).status).toBe(401);
+  });
+  test('sent twice at once makes one student', async () => {
+    const body = await wanted();
+    const replies = await Promise.all([join(body), join(body)]);
+    expect(replies.map(({ status }) => status)).toContain(200);
+    const card = must(await guest().post('/api/classes/look-up', { code: body.code }));
+    expect(card.benches).toEqual([{ bench: 1, people: 1 }]);
+  });
+  test.each([{ nickname: 'Newt' }, { bench: 2 }])('does not open somebody else: %o', async (change) => {
+    const body = await wanted();
+    must(await join(body));
+    const other = await join({ ...body, ...change });
+    expect([other.status, other.body.error.code]).toEqual([409, 'join_used']);
+  });
+  test('is not opened by another id', async () => {
+    const body = await wanted();
+    must(await join(body));
+    expect((await join({ ...body, join_id: randomUUID() })).body.error.code).toBe('nickname_taken');
+  });
+  test('can be sent again for a quarter of an hour', async () => {
+    let later = 0;
+    const other = await startServer({}, () => Date.now() + later);
+    const { ownClass } = await createSchool(other);
+    const body = { join_id: randomUUID(), code: ownClass.code, bench: 7, nickname: 'Newt' };
+    const send = () => createApiClient(other.url).post('/api/join', body);
+    must(await send());
+    later = 14 * 60_000;
+    expect((await send()).status).toBe(200);
+    later = 16 * 60_000;
+    expect((await send()).body.error.code).toBe('nickname_taken');
+    await other.stop();
   });
 });
 
@@ -98,7 +171,7 @@ describe('POST /api/return', () => {
     expect(reply.body.me.id).toBe(student.me.id);
     expect((await student.get('/api/me')).body.me.id).toBe(student.me.id);
   });
-  test('does not tell a wrong PIN from an unknown nickname', async () => {
+  test('does not tell a wrong PIN from an unknown nickname or class code', async () => {
     const { student, ownClass } = school;
     const said = { code: ownClass.code, bench: student.bench, nickname: student.nickname };
     const wrongPin = student.pin === '000000' ? '000001' : '000000';
@@ -106,7 +179,9 @@ describe('POST /api/return', () => {
       await guest().post('/api/return', { ...said, pin: wrongPin }),
       await guest().post('/api/return', { ...said, nickname: 'Nobody', pin: student.pin }),
     ];
+    const code = await guest().post('/api/return', { ...said, code: 'BBBBBB', pin: student.pin });
     expect([pin.status, pin.body]).toEqual([nickname.status, nickname.body]);
+    expect([pin.status, pin.body]).toEqual([code.status, code.body]);
     expect(pin.body.error.code).toBe('pin_not_matched');
   });
 });

@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { afterEach, beforeEach, expect, test } from 'vitest';
 import { startServer, type TestServer } from '../support/startServer';
 import { createApiClient } from './helpers/apiClient';
@@ -97,6 +98,86 @@ test('a reset link sets a new password once and signs the account out everywhere
   const signIn = (password: string) => guest().post('/api/sign-in', { email: 'mira@example.org', password });
   expect((await signIn(PASSWORD)).status).toBe(401);
   expect((await signIn('nine slow swings')).status).toBe(200);
+});
+
+test('a second reset link leaves the first good; once one is used the other opens nothing', async () => {
+  const forgot = () => guest().post('/api/password/forgot', { email: 'lead@example.org' });
+  await forgot();
+  const first = tokenIn(await mailNumber(1), 'reset');
+  await forgot();
+  const second = tokenIn(await mailNumber(2), 'reset');
+  const reset = (token: string) => guest().post('/api/password/reset', { token, password: 'nine slow swings' });
+  expect((await reset(first)).status).toBe(200);
+  expect((await reset(second)).status).toBe(410);
+});
+
+test('an invitation and a reset refuse the person’s own address as password, and the link stays good', async () => {
+  const email = 'mira.bracken@example.org';
+  await coordinator.post('/api/invites', { email, role: 'teacher' });
+  const token = tokenIn(await mailNumber(1), 'invite');
+  const own = await guest().post('/api/invites/accept', { token, name: 'Mira', password: email });
+  expect([own.status, own.body.error.fields[0].path]).toEqual([400, 'password']);
+  expect((await accept(token)).status).toBe(200);
+  await guest().post('/api/password/forgot', { email });
+  const reset = { token: tokenIn(await mailNumber(2), 'reset'), password: 'Mira.Bracken@example.org' };
+  expect((await guest().post('/api/password/reset', reset)).status).toBe(400);
+});
+
+test('a coordinator who was shut out does not come back by an invitation they made', async () => {
+  const second = await signInStaff(server, coordinator, 'coordinator', 'second@example.org');
+  await second.post('/api/invites', { email: 'back@example.org', role: 'coordinator' });
+  const theirs = tokenIn(await mailNumber(2), 'invite');
+  await coordinator.post('/api/invites', { email: 'mira@example.org', role: 'teacher' });
+  const others = tokenIn(await mailNumber(3), 'invite');
+  await coordinator.post(`/api/people/${second.me.id}/disable`);
+  expect((await accept(theirs)).status).toBe(410);
+  expect((await accept(others)).status).toBe(200);
+});
+
+test('an invitation that waits to be written while its inviter is shut out is not made', async () => {
+  const second = await signInStaff(server, coordinator, 'coordinator', 'second@example.org');
+  const { database, now } = server.running.deps;
+  let shut = () => {};
+  const shutting = database.writeTransaction(async (transaction) => {
+    await new Promise<void>((resolve) => (shut = resolve));
+    await database.models.StaffAccount.update({ disabled_ms: now() }, { where: { id: second.me.id }, transaction });
+  });
+  const late = second.post('/api/invites', { email: 'back@example.org', role: 'coordinator' });
+  await new Promise((resolve) => setTimeout(resolve, 100));
+  shut();
+  await shutting;
+  expect((await late).status).toBe(401);
+  expect((await coordinator.get('/api/people')).body.invites).toEqual([]);
+});
+
+test('a coordinator mails a colleague a reset link, which is written down', async () => {
+  const mira = await signInStaff(server, coordinator, 'teacher', 'mira@example.org');
+  expect((await coordinator.post(`/api/people/${mira.me.id}/reset-link`)).body).toEqual({ link: null });
+  const mail = await mailNumber(2);
+  expect(mail).toMatch(/^To: mira@example\.org/m);
+  const token = tokenIn(mail, 'reset');
+  expect((await guest().post('/api/password/reset', { token, password: 'nine slow swings' })).status).toBe(200);
+  const entry = await server.running.deps.database.models.ActivityEntry.findOne({
+    where: { action: 'people.reset_link', subject: mira.me.id },
+  });
+  expect(entry?.actor_id).toBe(coordinator.me.id);
+});
+
+test('without e-mail the coordinator is given the reset link once, and none for an account that is shut', async () => {
+  const other = await startServer({ mail: { kind: 'none' } });
+  const lead = await signInCoordinator(other);
+  const { link } = (await lead.post('/api/invites', { email: 'mira@example.org', role: 'teacher' })).body;
+  const mira = createApiClient(other.url);
+  const invite = { token: link.split('/').at(-1), name: 'Mira', password: PASSWORD };
+  const { me } = (await mira.post('/api/invites/accept', invite)).body;
+  const given = await lead.post(`/api/people/${me.id}/reset-link`);
+  const reset = { token: given.body.link.split('/reset/')[1], password: 'nine slow swings' };
+  expect((await mira.post('/api/password/reset', reset)).body).toEqual({ done: true });
+  expect((await lead.post(`/api/people/${randomUUID()}/reset-link`)).status).toBe(404);
+  await lead.post(`/api/people/${me.id}/disable`);
+  const shut = await lead.post(`/api/people/${me.id}/reset-link`);
+  expect([shut.status, shut.body.error.code]).toEqual([409, 'account_shut']);
+  await other.stop();
 });
 
 test('a reset link runs out after half an hour', async () => {

@@ -31,12 +31,14 @@ const MAY: Record<string, ActorKind[]> = {
   'delete /api/invites/:id': ['coordinator'],
   'post /api/people/:id/disable': ['coordinator'],
   'post /api/people/:id/enable': ['coordinator'],
+  'post /api/people/:id/reset-link': ['coordinator'],
   'get /api/classes': ['teacher', 'coordinator'],
   'post /api/classes': ['teacher', 'coordinator'],
   'get /api/classes/:id': ['teacher', 'coordinator'],
   'post /api/classes/:id/new-code': ['teacher', 'coordinator'],
   'post /api/classes/:id/new-board-pass': ['teacher', 'coordinator'],
   'post /api/students/:id/new-pin': ['teacher', 'coordinator'],
+  'delete /api/students/:id': ['teacher', 'coordinator'],
   'post /api/sync': ['student', 'volunteer', 'teacher', 'coordinator'],
   'get /api/feed': ['student', 'volunteer', 'teacher', 'coordinator'],
   'get /api/board': ['board'],
@@ -97,6 +99,11 @@ describe('what belongs to others', () => {
     const mate = await joinStudent(server, (await freshClass()).code, 7, 'Vole');
     expect((await ask(mate.me.id)).body.pin).toMatch(/^\d{6}$/);
   });
+  test('a teacher takes out own students alone', async () => {
+    const others = await school.teacher.delete(`/api/students/${school.otherStudent.me.id}`);
+    const nowhere = await school.teacher.delete(`/api/students/${randomUUID()}`);
+    expect([others.status, others.body]).toEqual([404, nowhere.body]);
+  });
   test('a teacher lists own classes alone, a coordinator all of them without names', async () => {
     const own = await school.teacher.get('/api/classes');
     expect(own.text).not.toContain(school.otherClass.id);
@@ -148,13 +155,14 @@ interface Example {
 
 /** Good input for each route that needs some. */
 async function exampleOf(route: Route): Promise<Example> {
-  const schoolClass = await freshClass();
   const token = 'x'.repeat(43);
-  const student = { code: schoolClass.code, bench: 1, nickname: 'Newt' };
+  const newcomer = async () => ({ code: (await freshClass()).code, bench: 1, nickname: 'Newt' });
+  const classId = async () => ({ params: { id: (await freshClass()).id } });
+  const studentId = async () => ({ params: { id: (await joinStudent(server, (await freshClass()).code)).me.id } });
   const examples: Record<string, () => Promise<Example> | Example> = {
-    'class.look_up': () => ({ body: { code: schoolClass.code } }),
-    'class.join': () => ({ body: student }),
-    'class.return': () => ({ body: { ...student, pin: '123456' } }),
+    'class.look_up': async () => ({ body: { code: (await freshClass()).code } }),
+    'class.join': async () => ({ body: { join_id: randomUUID(), ...(await newcomer()) } }),
+    'class.return': async () => ({ body: { ...(await newcomer()), pin: '123456' } }),
     'staff.sign_in': () => ({ body: { email: 'mira@example.org', password: PASSWORD } }),
     'staff.set_up': () => ({ body: { token, name: 'A', email: 'a@example.org', password: PASSWORD } }),
     'staff.accept_invite': () => ({ body: { token, name: 'A', password: PASSWORD } }),
@@ -168,11 +176,13 @@ async function exampleOf(route: Route): Promise<Example> {
     },
     'people.disable': disposablePerson,
     'people.enable': disposablePerson,
+    'people.reset_link': disposablePerson,
     'class.create': () => ({ body: { name: 'New', teacher_word: 'oak' } }),
-    'class.see': () => ({ params: { id: schoolClass.id } }),
-    'class.new_code': () => ({ params: { id: schoolClass.id } }),
-    'class.new_board_pass': () => ({ params: { id: schoolClass.id } }),
-    'student.new_pin': async () => ({ params: { id: (await joinStudent(server, schoolClass.code)).me.id } }),
+    'class.see': classId,
+    'class.new_code': classId,
+    'class.new_board_pass': classId,
+    'student.new_pin': studentId,
+    'student.remove': studentId,
     'runs.hand_in': () => ({ body: batch([]) }),
   };
   return (await examples[route.action]?.()) ?? {};

@@ -1,4 +1,4 @@
-import { existsSync, mkdtempSync, rmSync } from 'node:fs';
+import { chmodSync, existsSync, mkdtempSync, readdirSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { connect } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -135,6 +135,56 @@ test('a port that is in use, and a folder that is, are told in words', async () 
     expect.stringContaining('is in use by a running Swaymark server'),
   ]);
 });
+
+test('a damaged database is told in words, with what to do, and restoring a backup does it', async () => {
+  await start();
+  const file = join(folder, 'copy.sqlite3');
+  await runProcess({ DATA_DIR: dataDir }, 'server/cli/backup.ts', [file]);
+  await end('SIGTERM');
+  writeFileSync(join(dataDir, 'swaymark.sqlite3'), 'this is a text and was never a database '.repeat(200));
+  const { code, output } = await runProcess({ DATA_DIR: dataDir }, 'server/index.ts');
+  expect(code).toBe(1);
+  expect(output).toMatch(/^A database in .* is damaged \(SQLITE_NOTADB\)\. Put a backup in its place/);
+  expect(output).not.toMatch(/\.ts:|node_modules/);
+  const restored = await runProcess({ DATA_DIR: dataDir }, 'server/cli/restore.ts', [file]);
+  expect([restored.code, restored.output]).toEqual([0, expect.stringMatching(/signs in again(.|\n)*is kept as/)]);
+  await start();
+});
+
+test('a folder that cannot be made is told in words', async () => {
+  writeFileSync(join(folder, 'file'), '');
+  const { code, output } = await runProcess({ DATA_DIR: join(folder, 'file', 'data') }, 'server/index.ts');
+  expect([code, output]).toEqual([
+    1,
+    expect.stringMatching(/^The server cannot write in .* \(ENOTDIR\)\. Give its user/),
+  ]);
+});
+
+// The system lets root write everywhere.
+test.skipIf(process.getuid?.() === 0)('a folder that may only be read is told in words', async () => {
+  await start();
+  await end('SIGTERM');
+  chmodSync(dataDir, 0o500);
+  const { code, output } = await runProcess({ DATA_DIR: dataDir }, 'server/index.ts');
+  chmodSync(dataDir, 0o700);
+  expect([code, output]).toEqual([1, expect.stringMatching(/^The server cannot write in .*\. Give its user/)]);
+});
+
+test('no other user of the machine can read the database, its journal, a backup or a restored database', async () => {
+  const before = process.umask(0o022);
+  await start();
+  process.umask(before);
+  const file = join(folder, 'copy.sqlite3');
+  await runProcess({ DATA_DIR: dataDir }, 'server/cli/backup.ts', [file]);
+  const modes = () => [dataDir, ...readdirSync(dataDir).map((name) => join(dataDir, name)), file].map(modeOf);
+  expect(readdirSync(dataDir)).toContain('swaymark.sqlite3-wal');
+  expect(modes().filter((mode) => mode & 0o077)).toEqual([]);
+  await end('SIGTERM');
+  chmodSync(file, 0o644);
+  await runProcess({ DATA_DIR: dataDir }, 'server/cli/restore.ts', [file]);
+  expect(modeOf(join(dataDir, 'swaymark.sqlite3'))).toBe(0o600);
+});
+const modeOf = (path: string) => statSync(path).mode & 0o777;
 
 test('the demo prints its doors, holds runs of every kind, and leaves nothing behind', async () => {
   running = await startProcess({ TMPDIR: folder }, 'server/cli/demo.ts');

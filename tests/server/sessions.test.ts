@@ -1,6 +1,6 @@
 import { request as httpRequest, type IncomingMessage } from 'node:http';
 import { once } from 'node:events';
-import { statSync } from 'node:fs';
+import { existsSync, readFileSync, statSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import sqlite3 from 'sqlite3';
 import { afterEach, expect, test } from 'vitest';
@@ -131,6 +131,37 @@ test('the cookie is for this server alone: HttpOnly, SameSite=Lax, and over http
   const [cookie] = reply.headers.getSetCookie();
   expect(cookie).toMatch(/^__Host-swaymark=/);
   expect(cookie).toMatch(/; Path=\/; Expires=[^;]+; HttpOnly; Secure; SameSite=Lax$/);
+});
+
+test('with a new secret before the old one, who is signed in stays so', async () => {
+  const [newer, older] = ['n'.repeat(32), 'o'.repeat(32)];
+  server = await startServer({ sessionSecrets: [older] });
+  const { student } = await createSchool(server);
+  const { dataDir } = server;
+  await server.running.stop();
+  const isIn = async (sessionSecrets: string[]) => {
+    const other = await startServer({ dataDir, sessionSecrets });
+    const client = createApiClient(other.url);
+    client.cookie = student.cookie;
+    const { me } = (await client.get('/api/me')).body;
+    await other.stop();
+    return me !== null;
+  };
+  expect(await isIn([newer, older])).toBe(true);
+  expect(await isIn([newer])).toBe(false);
+});
+
+test.each(['', '\n', 'half a secret'])('a secret file that holds %j is made anew', async (left) => {
+  server = await startServer();
+  const { dataDir } = server;
+  await server.running.stop();
+  const file = join(dataDir, 'session-secret');
+  writeFileSync(file, left);
+  const second = await startServer({ dataDir });
+  expect(readFileSync(file, 'utf8')).toMatch(/^[\w-]{64}$/);
+  expect(statSync(file).mode & 0o077).toBe(0);
+  expect(existsSync(`${file}.part`)).toBe(false);
+  await second.stop();
 });
 
 test('session file and secret are for the server’s user alone', async () => {

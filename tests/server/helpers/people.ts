@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import type { ClassView, Me, StaffRole } from '@shared/schemas/accounts';
 import type { TestServer } from '../../support/startServer';
 import { createApiClient, type ApiClient, type Reply } from './apiClient';
@@ -46,7 +47,7 @@ export async function joinStudent(
   nickname = 'Otter',
 ): Promise<StudentClient> {
   const client = createApiClient(server.url);
-  const { me, pin } = must(await client.post('/api/join', { code, bench, nickname }));
+  const { me, pin } = must(await client.post('/api/join', { join_id: randomUUID(), code, bench, nickname }));
   return Object.assign(client, { me: me as Me, pin: pin as string, nickname, bench });
 }
 
