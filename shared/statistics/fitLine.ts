@@ -44,11 +44,11 @@ export function fitLine(x: number[], y: number[], isOdd?: boolean[]): LineFit | 
 
 /** What is left of a column when its shares along an orthonormal basis are taken away; twice, for rounding. */
 function without(column: number[], basis: number[][]): number[] {
-  let rest = column;
+  const rest = column.slice();
   for (let turn = 0; turn < 2; turn += 1) {
     for (const q of basis) {
       const share = dot(q, rest);
-      rest = rest.map((v, i) => v - share * q[i]!);
+      for (let i = 0; i < rest.length; i += 1) rest[i]! -= share * q[i]!;
     }
   }
   return rest;

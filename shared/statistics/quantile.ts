@@ -11,7 +11,7 @@
 export function quantile(values: readonly number[], share: number): number {
   if (values.length === 0) throw new RangeError('quantile: values is empty, one or more are needed');
   if (!(share >= 0 && share <= 1)) throw new RangeError(`quantile: share is ${share}, allowed is 0 to 1`);
-  const sorted = [...values].sort((a, b) => a - b);
+  const sorted = Float64Array.from(values).sort();
   const place = share * (sorted.length - 1);
   const below = Math.floor(place);
   const low = sorted[below]!;

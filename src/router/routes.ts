@@ -4,8 +4,6 @@ declare module 'vue-router' {
   interface RouteMeta {
     /** Who may open it; without it anybody, signed in or not. */
     needs?: 'staff' | 'coordinator';
-    /** Ends with the button that keeps what was filled in: no bar lies over it. */
-    isForm?: boolean;
   }
 }
 
@@ -38,10 +36,10 @@ export const routes: RouteRecordRaw[] = [
     component: FieldLayout,
     children: [
       { path: '', name: 'bench', component: () => import('@/pages/BenchPage.vue') },
-      { path: 'rig', name: 'rig', component: () => import('@/pages/RigPage.vue'), meta: { isForm: true } },
+      { path: 'rig', name: 'rig', component: () => import('@/pages/RigPage.vue') },
       { path: 'plan', name: 'planner', component: () => import('@/pages/PlannerPage.vue') },
-      { path: 'key-in', name: 'keyIn', component: () => import('@/pages/KeyInPage.vue'), meta: { isForm: true } },
-      { path: 'gate', name: 'gate', component: () => import('@/pages/GatePage.vue'), meta: { isForm: true } },
+      { path: 'key-in', name: 'keyIn', component: () => import('@/pages/KeyInPage.vue') },
+      { path: 'gate', name: 'gate', component: () => import('@/pages/GatePage.vue') },
       { path: 'runs/:id', name: 'run', component: () => import('@/pages/RunPage.vue') },
       { path: '/hand-in', name: 'handIn', component: () => import('@/pages/HandInPage.vue') },
       { path: '/settings', name: 'settings', component: () => import('@/pages/SettingsPage.vue') },

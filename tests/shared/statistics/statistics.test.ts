@@ -59,6 +59,19 @@ test('effectiveDof is infinite when no share has fewer', () => {
 });
 
 describe('fitLine', () => {
+  test('reads each point a fixed number of times, however many there are', () => {
+    const reads = (n: number) => {
+      let count = 0;
+      const x = new Proxy(
+        Array.from({ length: n }, (_, i) => i),
+        { get: (target, key) => ((count += 1), Reflect.get(target, key)) },
+      );
+      fitLine(x, [...x]);
+      return count;
+    };
+    expect(reads(2_000) / reads(1_000)).toBeLessThan(2.1);
+  });
+
   test('gives the certified values of NIST StRD Norris', () => {
     const line = fitLine(norris.x, norris.y)!;
     expect(line.slope).toBeCloseTo(norris.certified.slope, 12);
