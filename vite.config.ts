@@ -78,7 +78,10 @@ export default defineConfig(({ mode }) => {
       reporters: ['default', at('./tests/support/closingLine.ts')],
       projects: [
         { extends: true, test: { name: 'shared', include: ['tests/shared/**/*.test.ts'], environment: 'node' } },
-        { extends: true, test: { name: 'src', include: ['tests/src/**/*.test.ts'], environment: 'happy-dom' } },
+        {
+          extends: true,
+          test: { name: 'src', include: ['tests/src/**/*.test.ts'], environment: 'happy-dom', testTimeout: 30_000 },
+        },
         {
           extends: true,
           test: { name: 'server', include: ['tests/server/**/*.test.ts'], environment: 'node', testTimeout: 30_000 },
@@ -91,8 +94,9 @@ export default defineConfig(({ mode }) => {
             environment: 'node',
             testTimeout: 120_000,
             hookTimeout: 120_000,
-            // One Chromium at a time: two cores, and timing is what these tests are about.
+            // One Chromium at a time, and after everything else: timing is what these tests are about.
             fileParallelism: false,
+            sequence: { groupOrder: 1 },
           },
         },
       ],

@@ -34,14 +34,14 @@ const SPREAD_WHEN_GUESSED = 0.67;
 const LEAST_LOSS = 1e-4;
 const MOST_LOSS = 0.5;
 
-/** @returns undefined when nothing tells the amplitude, or the marks lie on no line */
+/** @returns undefined when nothing tells the amplitude, it is next to none, or the marks lie on no line */
 export function startMotion(data: MotionData, from: number): MotionStart | undefined {
   const line = fitLine(data.swings, data.times, data.isOdd);
   if (!line || !(line.slope > 0)) return undefined;
   const spare = Math.max(line.residuals.length - line.basis.length, 1);
   const jitter = Math.sqrt(line.residuals.reduce((sum, r) => sum + r * r, 0) / spare);
   const points = [...data.readings, ...(data.gate ? fromBlocks(data, line.slope, line.offset) : [])];
-  if (points.length === 0) return undefined;
+  if (points.length === 0 || points.some(({ amplitude }) => !(amplitude > LEAST_AMPLITUDE))) return undefined;
   points.sort((a, b) => a.swing - b.swing);
   const [first, last] = [points[0]!, points.at(-1)!];
   const apart = last.swing - first.swing;
@@ -65,6 +65,8 @@ export function startMotion(data: MotionData, from: number): MotionStart | undef
   };
 }
 
+/** rad. With less, at any reading, there is no swing to tell losses from. */
+const LEAST_AMPLITUDE = 1e-5;
 /** rad. */
 const LARGEST = (176 / 180) * Math.PI;
 

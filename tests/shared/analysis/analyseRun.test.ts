@@ -41,6 +41,16 @@ describe('analyseRun', () => {
     );
   }, 60_000);
 
+  test('with an amplitude of next to nothing reckons with none of its losses', () => {
+    const sideways = { form: 'sideways' as const, sideways_um: 1, length_um: 10_000_000 };
+    const analysis = analysed(
+      rawTapRun({ times: evenTimes(11, 2), amplitudes: [{ swing: 0, as_read: sideways, u: 0 }] }),
+    );
+    expect(() => Analysis.parse(analysis)).not.toThrow();
+    expect(analysis.small_period_s!.value).toBeCloseTo(2, 9);
+    expect(analysis.motion).toBeNull();
+  });
+
   test('with all times scaled scales T0 and its type A uncertainty', () => {
     fc.assert(
       fc.property(fc.integer({ min: 1, max: 50 }), fc.double({ min: 0.3, max: 3, noNaN: true }), (seed, scale) => {

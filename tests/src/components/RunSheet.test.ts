@@ -1,6 +1,6 @@
 import 'fake-indexeddb/auto';
 import { flushPromises } from '@vue/test-utils';
-import { afterEach, expect, it, vi } from 'vitest';
+import { afterEach, expect, it } from 'vitest';
 import { computed, defineComponent, h } from 'vue';
 import { analyseRun } from '@shared/analysis/analyseRun';
 import { canonicalText, digestOf } from '@shared/schemas/canonical';
@@ -12,6 +12,7 @@ import { rawRun } from '../support/samples';
 import RunSheet from '@/components/run/RunSheet.vue';
 import { useRuns } from '@/stores/useRuns';
 import { useSession } from '@/stores/useSession';
+import { eventually } from '../../support/eventually';
 
 /** The sheet over the real store of this device, as the page shows it. */
 async function openSheet(parts: Partial<RawRun>) {
@@ -32,7 +33,7 @@ async function openSheet(parts: Partial<RawRun>) {
       .findAll('button')
       .find((button) => button.text() === name || button.attributes('aria-label') === name)!
       .trigger('click');
-    await vi.waitFor(() => expect(useRuns().entry(raw.id)!.edits.length).toBeGreaterThan(0));
+    await eventually(() => expect(useRuns().entry(raw.id)!.edits.length).toBeGreaterThan(0));
     await flushPromises();
   };
   return { wrapper, press, entry: () => useRuns().entry(raw.id)! };
@@ -71,7 +72,7 @@ it('leaving out a double tap answers its flag, and undoing brings it back', asyn
   expect(wrapper.find('.pass-table__out').text()).toContain('left out');
 
   await press('Undo: Mark 9 left out');
-  await vi.waitFor(() => expect(wrapper.text()).toContain('One flag is open.'));
+  await eventually(() => expect(wrapper.text()).toContain('One flag is open.'));
   expect(entry().analysis.small_period_s!.value).toBe(before);
 });
 
@@ -85,7 +86,7 @@ it('keeping a flag asks for a reason before it is kept', async () => {
 
   await wrapper.find('.flag-card form input').setValue('the bob was caught there');
   await wrapper.find('.flag-card form').trigger('submit');
-  await vi.waitFor(() => expect(entry().edits[0]?.raw.reason).toBe('the bob was caught there'));
+  await eventually(() => expect(entry().edits[0]?.raw.reason).toBe('the bob was caught there'));
   expect(entry().edits[0]!.raw.change).toEqual({ kind: 'keep_flagged', flag: 'double', mark: 9 });
 });
 
@@ -100,9 +101,9 @@ it('a count that fits another number of swings is set by what the person types',
     .find((one) => one.text() === 'Set the number of swings')!
     .trigger('click');
   await wrapper.find('.flag-card form').trigger('submit');
-  await vi.waitFor(() => expect(entry().edits[0]?.raw.change).toEqual({ kind: 'set_swings', swings: 19 }));
+  await eventually(() => expect(entry().edits[0]?.raw.change).toEqual({ kind: 'set_swings', swings: 19 }));
   expect(entry().analysis.swings).toBe(19);
-  await vi.waitFor(() => expect(wrapper.text()).not.toContain('Not settled'));
+  await eventually(() => expect(wrapper.text()).not.toContain('Not settled'));
 });
 
 it('a gate run shows its marks and its budget', async () => {

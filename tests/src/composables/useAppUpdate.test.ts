@@ -1,6 +1,7 @@
 import { afterEach, beforeEach, expect, it, vi } from 'vitest';
 import { RECORDING_LOCK } from '@/sync/recordingLock';
 import { locksOfOneBrowser } from '../support/locksOfOneBrowser';
+import { eventually } from '../../support/eventually';
 
 /** A tab, with the worker's registration as vite-plugin-pwa calls it. */
 async function openTab() {
@@ -41,7 +42,7 @@ it('R19: a new version is not taken while any tab times a run', async () => {
   expect(tab.takeOver).not.toHaveBeenCalled();
 
   stopTiming();
-  await vi.waitFor(async () => expect(await tab.accept()).toBe(true));
+  await eventually(async () => expect(await tab.accept()).toBe(true));
   expect(tab.takeOver).toHaveBeenCalledTimes(1);
 });
 

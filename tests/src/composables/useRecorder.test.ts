@@ -5,6 +5,7 @@ import { GRACE_MS, useRecorder, type RecorderOptions } from '@/composables/useRe
 import { WRITE_DEADLINE_MS } from '@/composables/eventWriter';
 import { closeStore, LocalStore } from '@/db/localStore';
 import type { RawRun, TapCapture } from '@shared/schemas/run';
+import { eventually } from '../../support/eventually';
 
 let store: LocalStore;
 let scope: EffectScope;
@@ -203,7 +204,7 @@ describe('useRecorder', () => {
     add.mockRestore();
     pass(2000);
     tapTimes(recorder, 1);
-    await vi.waitFor(() => expect(recorder.isFailing.value).toBe(false));
+    await eventually(() => expect(recorder.isFailing.value).toBe(false));
     await vi.advanceTimersByTimeAsync(2 * WRITE_DEADLINE_MS);
     expect(recorder.isFailing.value).toBe(false);
     expect(await store.recordingEvents.count()).toBe(3);

@@ -1,10 +1,11 @@
 import 'fake-indexeddb/auto';
 import { flushPromises } from '@vue/test-utils';
 import { v4 as uuidv4 } from 'uuid';
-import { afterEach, expect, it, vi } from 'vitest';
+import { afterEach, expect, it } from 'vitest';
 import { mountPage } from '../support/mountApp';
 import { json, plugIn, said, type Wire } from '../support/network';
 import BoardPage from '@/pages/BoardPage.vue';
+import { eventually } from '../../support/eventually';
 
 const point = (bench: number, value: number) => ({
   run_id: uuidv4(),
@@ -28,14 +29,14 @@ async function openBoard(board: Wire) {
   const sent = plugIn((path, init) => (path.includes('/board') ? board(path, init) : json({ me: null })));
   const { wrapper } = await mountPage(BoardPage, { name: 'board', params: { pass: uuidv4() } });
   opened.push(wrapper);
-  await vi.waitFor(() => expect(sent.some(({ path }) => path.includes('/board'))).toBe(true));
+  await eventually(() => expect(sent.some(({ path }) => path.includes('/board'))).toBe(true));
   await flushPromises();
   return wrapper;
 }
 
 it('shows the middle of the benches, how many runs, and how to join', async () => {
   const wrapper = await openBoard(() => json(answer([point(1, 2.0), point(2, 2.01), point(3, 2.02)])));
-  await vi.waitFor(() => expect(wrapper.text()).toContain('11B Physics'));
+  await eventually(() => expect(wrapper.text()).toContain('11B Physics'));
   expect(wrapper.find('.board-headline__number').text()).toMatch(/^2\.010/);
   expect(wrapper.text()).toContain('3 runs · 3 benches');
   expect(wrapper.text()).toContain('K4R7MP');
@@ -44,12 +45,12 @@ it('shows the middle of the benches, how many runs, and how to join', async () =
 
 it('waits with the code while no run is there', async () => {
   const wrapper = await openBoard(() => json(answer([])));
-  await vi.waitFor(() => expect(wrapper.find('.board-waiting__code').text()).toBe('K4R7MP'));
+  await eventually(() => expect(wrapper.find('.board-waiting__code').text()).toBe('K4R7MP'));
 });
 
 it('says that no board is under a link the server does not know', async () => {
   const wrapper = await openBoard(() => said(401, 'board_pass_unknown', 'No board has this pass.'));
-  await vi.waitFor(() => expect(wrapper.find('h1').text()).toBe('No board under this link'));
+  await eventually(() => expect(wrapper.find('h1').text()).toBe('No board under this link'));
 });
 
 it('keeps the picture when the network goes and says of when it is', async () => {
@@ -58,15 +59,15 @@ it('keeps the picture when the network goes and says of when it is', async () =>
     if (!isUp) throw new TypeError('no network');
     return json(answer([point(1, 2.0)]));
   });
-  await vi.waitFor(() => expect(wrapper.text()).toContain('Updated'));
+  await eventually(() => expect(wrapper.text()).toContain('Updated'));
   isUp = false;
-  await vi.waitFor(() => expect(wrapper.text()).toMatch(/Showing \d\d:\d\d/), { timeout: 5000 });
+  await eventually(() => expect(wrapper.text()).toMatch(/Showing \d\d:\d\d/));
   expect(wrapper.text()).toContain('2.000');
 });
 
 it('B blanks, T shows the table, F freezes, and a key with Ctrl is the browser’s', async () => {
   const wrapper = await openBoard(() => json(answer([point(1, 2.0), point(2, 2.01)])));
-  await vi.waitFor(() => expect(wrapper.text()).toContain('Updated'));
+  await eventually(() => expect(wrapper.text()).toContain('Updated'));
   const main = wrapper.find('main');
   await main.trigger('keydown', { key: 'b' });
   expect(wrapper.text()).not.toContain('11B Physics');
@@ -81,7 +82,7 @@ it('B blanks, T shows the table, F freezes, and a key with Ctrl is the browser�
 
 it('names nobody', async () => {
   const wrapper = await openBoard(() => json(answer([point(4, 2.0)])));
-  await vi.waitFor(() => expect(wrapper.text()).toContain('Updated'));
+  await eventually(() => expect(wrapper.text()).toContain('Updated'));
   await wrapper.find('main').trigger('keydown', { key: 't' });
   const cells = wrapper.findAll('.board-table tbody td, .board-table tbody th').map((cell) => cell.text());
   expect(cells).toEqual(['4', '2.0000', '0.0060', '1.000', '–']);

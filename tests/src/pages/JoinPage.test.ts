@@ -8,6 +8,7 @@ import { flushPromises } from '@vue/test-utils';
 import { json, plugIn, said, type SentRequest } from '../support/network';
 import { mountApp } from '../support/mountApp';
 import { student } from '../support/samples';
+import { eventually } from '../../support/eventually';
 
 const card = { name: '11B', teacher_word: 'plumb', benches: [{ bench: 3, people: 2 }] };
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/;
@@ -40,18 +41,18 @@ const sentTo = (path: string) => sent.filter((request) => request.path === path)
 
 it('a link with the code shows the class and its word at once', async () => {
   const page = await mountAt('/join/k4r-7mp');
-  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await eventually(() => expect(page.text()).toContain('plumb'));
   expect(sentTo('/api/classes/look-up')[0]!.body).toEqual({ code: 'K4R7MP' });
   expect(page.text()).toContain('2 here');
 });
 
 it('bench and nickname join, and the PIN is shown', async () => {
   const page = await mountAt('/join/K4R7MP');
-  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await eventually(() => expect(page.text()).toContain('plumb'));
   await page.get('input[value="7"]').setValue();
   await page.get('input[maxlength="24"]').setValue(' Kite ');
   await page.get('form').trigger('submit');
-  await vi.waitFor(() => expect(page.text()).toContain('Write this PIN down'));
+  await eventually(() => expect(page.text()).toContain('Write this PIN down'));
   expect(page.text()).toContain('204');
   expect(sentTo('/api/join')[0]!.body).toEqual({
     code: 'K4R7MP',
@@ -64,13 +65,13 @@ it('bench and nickname join, and the PIN is shown', async () => {
 it('a joining sent again because its answer was lost has the same id, another nickname another', async () => {
   takes = false;
   const page = await mountAt('/join/K4R7MP');
-  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await eventually(() => expect(page.text()).toContain('plumb'));
   await page.get('input[value="7"]').setValue();
   for (const [i, name] of ['Kite', 'Kite', 'Wren', 'Kite'].entries()) {
     await page.get('input[maxlength="24"]').setValue(name);
     await page.get('form').trigger('submit');
-    await vi.waitFor(() => expect(sentTo('/api/join')).toHaveLength(i + 1));
-    await vi.waitFor(() => expect(page.text()).toContain('Bench 7 has a Kite.'));
+    await eventually(() => expect(sentTo('/api/join')).toHaveLength(i + 1));
+    await eventually(() => expect(page.text()).toContain('Bench 7 has a Kite.'));
   }
   const [first, again, other, back] = sentTo('/api/join').map(({ body }) => (body as { join_id: string }).join_id);
   expect([again, back]).toEqual([first, first]);
@@ -79,25 +80,25 @@ it('a joining sent again because its answer was lost has the same id, another ni
 
 it('the PIN is shown though the phone cannot keep who joined', async () => {
   const page = await mountAt('/join/K4R7MP');
-  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await eventually(() => expect(page.text()).toContain('plumb'));
   await page.get('input[value="7"]').setValue();
   await page.get('input[maxlength="24"]').setValue('Kite');
   vi.spyOn(IDBObjectStore.prototype, 'put').mockImplementation(() => {
     throw new DOMException('no room is left', 'QuotaExceededError');
   });
   await page.get('form').trigger('submit');
-  await vi.waitFor(() => expect(page.find('[role="alert"]').exists()).toBe(true));
+  await eventually(() => expect(page.find('[role="alert"]').exists()).toBe(true));
   expect(page.get('.pin-card__pin').text()).toContain('204');
 });
 
 it('a taken name is said beside the field, and what was typed stays', async () => {
   takes = false;
   const page = await mountAt('/join/K4R7MP');
-  await vi.waitFor(() => expect(page.text()).toContain('plumb'));
+  await eventually(() => expect(page.text()).toContain('plumb'));
   await page.get('input[value="7"]').setValue();
   await page.get('input[maxlength="24"]').setValue('Kite');
   await page.get('form').trigger('submit');
-  await vi.waitFor(() => expect(page.text()).toContain('Bench 7 has a Kite.'));
+  await eventually(() => expect(page.text()).toContain('Bench 7 has a Kite.'));
   expect((page.get('input[maxlength="24"]').element as HTMLInputElement).value).toBe('Kite');
 });
 

@@ -1,6 +1,6 @@
 import 'fake-indexeddb/auto';
 import { flushPromises, type VueWrapper } from '@vue/test-utils';
-import { afterEach, beforeEach, expect, it, vi } from 'vitest';
+import { afterEach, beforeEach, expect, it } from 'vitest';
 import { defineComponent, h, ref, type Component } from 'vue';
 import type { RouteLocationRaw } from 'vue-router';
 import { json, plugIn, said, type SentRequest } from '../support/network';
@@ -10,6 +10,7 @@ import DeskClassPage from '@/pages/DeskClassPage.vue';
 import DeskPage from '@/pages/DeskPage.vue';
 import PeoplePage from '@/pages/PeoplePage.vue';
 import { useSession } from '@/stores/useSession';
+import { eventually } from '../../support/eventually';
 
 const COLLEAGUE = '018f0000-0000-7000-8000-0000000b0002';
 const [WREN, KITE] = ['018f0000-0000-7000-8000-0000000a0001', '018f0000-0000-7000-8000-0000000a0002'];
@@ -63,12 +64,12 @@ const guarded = (page: Component) =>
 async function open(page: Component, at: RouteLocationRaw, shows: string) {
   const { wrapper } = await mountPage(guarded(page), at);
   close = () => wrapper.unmount();
-  await vi.waitFor(() => expect(wrapper.text()).toContain(shows));
+  await eventually(() => expect(wrapper.text()).toContain(shows));
   return wrapper;
 }
 async function press(page: VueWrapper, name: string) {
   const named = (button: { text(): string; attributes(name: string): string | undefined }) =>
-    button.attributes('aria-label') === name || button.text() === name;
+    (button.attributes('aria-label') ?? button.text()) === name;
   await page.findAll('button').find(named)!.trigger('click');
   await flushPromises();
 }
@@ -76,7 +77,7 @@ async function press(page: VueWrapper, name: string) {
 it('a reset link is shown to pass on when the server sends no mail', async () => {
   const page = await open(PeoplePage, { name: 'people' }, 'Sam Reed');
   await press(page, 'Reset link for Sam Reed');
-  await vi.waitFor(() => expect(page.text()).toContain('https://swaymark.example/reset/0123456789abcdef'));
+  await eventually(() => expect(page.text()).toContain('https://swaymark.example/reset/0123456789abcdef'));
   expect(sent.find(({ path }) => path === `/api/people/${COLLEAGUE}/reset-link`)!.method).toBe('POST');
 });
 
@@ -84,7 +85,7 @@ it('a reset link that was mailed is not shown', async () => {
   mails = true;
   const page = await open(PeoplePage, { name: 'people' }, 'Sam Reed');
   await press(page, 'Reset link for Sam Reed');
-  await vi.waitFor(() => expect(page.text()).toContain('on its way to Sam Reed'));
+  await eventually(() => expect(page.text()).toContain('on its way to Sam Reed'));
   expect(page.text()).not.toContain('https://');
 });
 
@@ -93,14 +94,14 @@ it('a student without runs is removed after being asked once', async () => {
   await press(page, 'Remove Wren, bench 1');
   expect(sent.some(({ method }) => method === 'DELETE')).toBe(false);
   await press(page, 'Remove');
-  await vi.waitFor(() => expect(page.text()).not.toContain('Wren'));
+  await eventually(() => expect(page.text()).not.toContain('Wren'));
 });
 
 it('a student with runs stays, and the server’s reason is told', async () => {
   const page = await open(DeskClassPage, { name: 'deskClass', params: { id: CLASS_ID } }, 'Kite');
   await press(page, 'Remove Kite, bench 2');
   await press(page, 'Remove');
-  await vi.waitFor(() => expect(page.text()).toContain('Kite has handed in one run.'));
+  await eventually(() => expect(page.text()).toContain('Kite has handed in one run.'));
 });
 
 it('classes that came from the server are word from the server', async () => {

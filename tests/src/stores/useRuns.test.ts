@@ -14,6 +14,7 @@ import { useHandInLines } from '@/composables/useHandInLines';
 import { runLine } from '@/components/desk/runLines';
 import { useRuns } from '@/stores/useRuns';
 import { useSession } from '@/stores/useSession';
+import { eventually } from '../../support/eventually';
 
 const HERE = { class_id: CLASS_ID, bench: 3 };
 plugIn(() => json({ me: null }));
@@ -50,7 +51,7 @@ it.each([
   const good = await addRun(store, rawRun(), HERE);
   const bad = await addRun(store, rawRun(), HERE);
   await store.runs.update(bad.id, text);
-  await vi.waitFor(() => expect(useRuns().unreadable.map(({ row }) => row.id)).toEqual([bad.id]));
+  await eventually(() => expect(useRuns().unreadable.map(({ row }) => row.id)).toEqual([bad.id]));
   expect(useRuns().entries.map(({ row }) => row.id)).toEqual([good.id]);
   await flushPromises();
   expect(page.findAll('.run-line')).toHaveLength(1);
@@ -69,7 +70,7 @@ it('a run that alone is there and cannot be read is not called nothing', async (
   const page = await openPage(HandInPage);
   const bad = await addRun(store, rawRun(), HERE);
   await store.runs.update(bad.id, { raw: '{' });
-  await vi.waitFor(() => expect(page.find('.unreadable-rows').exists()).toBe(true));
+  await eventually(() => expect(page.find('.unreadable-rows').exists()).toBe(true));
   expect(page.text()).not.toContain('Nothing to hand in yet');
 });
 
@@ -77,9 +78,9 @@ it('an edit that cannot be read is left out of force and counted, and its run st
   await openPage(BenchPage);
   const run = await addRun(store, rawRun(), HERE);
   const edit = await addEdit(store, rawEdit(run.id, { kind: 'set_swings', swings: 31 }));
-  await vi.waitFor(() => expect(swings(run.id)).toBe(31));
+  await eventually(() => expect(swings(run.id)).toBe(31));
   await store.edits.update(edit.id, { raw: '{}' });
-  await vi.waitFor(() => expect(swings(run.id)).toBe(20));
+  await eventually(() => expect(swings(run.id)).toBe(20));
   expect(useRuns().entry(run.id)!.unreadableEdits).toBe(1);
   expect(useHandInLines().unreadable.value.map(({ row }) => row.id)).toEqual([edit.id]);
 });
@@ -89,9 +90,9 @@ it('a refused edit stays in the history and counts no more, nor does its undoing
   const run = await addRun(store, rawRun(), HERE);
   const first = await addEdit(store, rawEdit(run.id, { kind: 'set_swings', swings: 31 }));
   const undo = await addEdit(store, rawEdit(run.id, { kind: 'withdraw', edit_id: first.id }));
-  await vi.waitFor(() => expect(swings(run.id)).toBe(20));
+  await eventually(() => expect(swings(run.id)).toBe(20));
   await refuse('edit', undo);
-  await vi.waitFor(() => expect(swings(run.id)).toBe(31));
+  await eventually(() => expect(swings(run.id)).toBe(31));
   expect(useRuns().entry(run.id)!.edits).toHaveLength(2);
 });
 
@@ -101,7 +102,7 @@ it('edits of a refused run go on counting here, for nobody else has any of it', 
   const edit = await addEdit(store, rawEdit(run.id, { kind: 'set_swings', swings: 31 }));
   await refuse('run', run);
   await refuse('edit', edit);
-  await vi.waitFor(() => expect(useRuns().entry(run.id)?.row.state).toBe('refused'));
+  await eventually(() => expect(useRuns().entry(run.id)?.row.state).toBe('refused'));
   expect(swings(run.id)).toBe(31);
 });
 
@@ -109,12 +110,12 @@ it('the Desk lists the server’s analysis while nothing waits here, refused edi
   await openPage(BenchPage);
   const run = await addRun(store, rawRun(), HERE);
   const edit = await addEdit(store, rawEdit(run.id, { kind: 'set_swings', swings: 31 }));
-  await vi.waitFor(() => expect(swings(run.id)).toBe(31));
+  await eventually(() => expect(swings(run.id)).toBe(31));
   const analysis = { ...useRuns().entry(run.id)!.analysis, swings: 77 };
   await store.analyses.put({ run_id: run.id, input_digest: analysis.input_digest, server_seq: 1, analysis });
   const listed = () => runLine(useRuns().entry(run.id)!).swings;
-  await vi.waitFor(() => expect(useRuns().entry(run.id)!.official).not.toBeNull());
+  await eventually(() => expect(useRuns().entry(run.id)!.official).not.toBeNull());
   expect(listed()).toBe(31);
   await refuse('edit', edit);
-  await vi.waitFor(() => expect(listed()).toBe(77));
+  await eventually(() => expect(listed()).toBe(77));
 });

@@ -6,6 +6,7 @@ import type { SyncItem } from '@shared/schemas/sync';
 import { locksOfOneBrowser } from '../support/locksOfOneBrowser';
 import { json, plugIn, type SentRequest, type Wire } from '../support/network';
 import { feedAnswer, JOIN_ID, rawRun, stored, student, syncAnswer } from '../support/samples';
+import { eventually } from '../../support/eventually';
 
 const ann = student(1);
 const offline: Wire = () => Promise.reject(new TypeError('Failed to fetch'));
@@ -59,8 +60,8 @@ it('a run goes out by itself as it is kept, and the words follow it', async () =
   expect(sync.state).toBe('guest');
   await session.join({ join_id: JOIN_ID, code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
   const row = await runs.addRun(rawRun());
-  await vi.waitFor(() => expect(runs.entry(row.id)!.row.state).toBe('received'), 4_000);
-  await vi.waitFor(() => expect(sync.state).toBe('quiet'));
+  await eventually(() => expect(runs.entry(row.id)!.row.state).toBe('received'));
+  await eventually(() => expect(sync.state).toBe('quiet'));
 });
 
 it('a run kept with no network is counted after a reload, and goes out when the network is back', async () => {
@@ -72,12 +73,12 @@ it('a run kept with no network is counted after a reload, and goes out when the 
   closeAll();
 
   const { sync } = await loadPage();
-  await vi.waitFor(() => expect(sync.state).toBe('unreachable'));
+  await eventually(() => expect(sync.state).toBe('unreachable'));
   expect(sync.waiting).toBe(1);
 
   const sent = plugIn(server);
   window.dispatchEvent(new Event('online'));
-  await vi.waitFor(() => expect(sync.state).toBe('quiet'), 4_000);
+  await eventually(() => expect(sync.state).toBe('quiet'));
   expect(posts(sent)).toHaveLength(1);
 });
 
@@ -97,11 +98,11 @@ it('R7: with the sign-in run out a run is kept, not sent, and goes out after com
   const sent = plugIn((path, init) => (path === '/api/me' ? json({ me: null }) : server(path, init)));
   const { session, sync, runs } = await loadPage();
   const row = await runs.addRun(rawRun());
-  await vi.waitFor(() => expect(sync.state).toBe('signed_out'));
+  await eventually(() => expect(sync.state).toBe('signed_out'));
   expect(posts(sent)).toEqual([]);
   expect(runs.entry(row.id)!.row.state).toBe('waiting');
 
   plugIn((path, init) => (path === '/api/return' ? json({ me: ann }) : server(path, init)));
   await session.comeBack({ code: 'K4R7MP', bench: 1, nickname: 'Bob 1', pin: '204611' }, true);
-  await vi.waitFor(() => expect(runs.entry(row.id)!.row.state).toBe('received'), 4_000);
+  await eventually(() => expect(runs.entry(row.id)!.row.state).toBe('received'));
 });
