@@ -88,6 +88,10 @@ export default defineConfig(({ mode }) => {
         },
         {
           extends: true,
+          test: { name: 'faults', include: ['tests/faults/**/*.test.ts'], environment: 'node', testTimeout: 300_000 },
+        },
+        {
+          extends: true,
           test: {
             name: 'browser',
             include: ['tests/browser/**/*.test.ts'],

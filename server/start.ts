@@ -58,7 +58,8 @@ async function openDataDir(config: Config, now: () => number) {
   }
 }
 
-async function createDeps(config: Config, now: () => number): Promise<Deps> {
+/** Everything a server is made of but its port, opened in DATA_DIR, which the caller holds for itself. */
+export async function createDeps(config: Config, now: () => number): Promise<Deps> {
   const log = createLog(config);
   const database = await openDatabase(config.dataDir);
   return {

@@ -41,7 +41,7 @@ export async function createClass(teacher: ApiClient, name = 'Physics 10 blue'):
 }
 
 export async function joinStudent(
-  server: TestServer,
+  server: Pick<TestServer, 'url'>,
   code: string,
   bench = 1,
   nickname = 'Otter',

@@ -1,0 +1,3 @@
+import { forAllSchedules } from './sim/forAllSchedules';
+
+forAllSchedules(0);
