@@ -40,7 +40,13 @@ export const useSession = defineStore('session', () => {
       return;
     }
     watchRememberedMe().subscribe((who) => void followOtherTab(who));
+    void withUploadLock(finishClaim).catch(() => undefined);
     void askTheServer();
+  }
+
+  /** A page may have ended while it moved the guest's runs into this account. */
+  async function finishClaim(): Promise<void> {
+    if (me.value && store.value) await claimGuest(store.value, me.value, !(await isRecording()), 'begun');
   }
 
   /** In the background, at the start and when the network may be back. Without an answer nothing changes. */

@@ -116,7 +116,8 @@ function inCopy({ file, changes }) {
     const failed = /Property failed after (\d+) tests\s*\{ seed: (-?\d+)/.exec(output);
     if (status === 0) return null;
     if (!failed) throw new Error(`the schedules did not run:\n${output}`);
-    const seen = /Caused by: Broken: (.*)/.exec(output)?.[1] ?? /Caused by: (.*)/.exec(output)?.[1];
+    const seen = /Caused by: Broken: (.*)/.exec(output)?.[1];
+    if (!seen) throw new Error(`something else than an invariant broke:\n${output}`);
     return { schedules: Number(failed[1]), seed: failed[2], seen };
   } finally {
     rmSync(copy, { recursive: true, force: true });

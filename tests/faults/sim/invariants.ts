@@ -1,4 +1,6 @@
 import type { EditRow, MetaRow, RecordingRow, RunRow } from '@/db/localStore';
+import { ownerKey } from '@/db/localStore';
+import type { Me } from '@shared/schemas/accounts';
 import type { SyncAnswer } from '@shared/schemas/sync';
 import { whyNotMade, type Made } from './made';
 import type { Phone } from './phone';
@@ -167,6 +169,32 @@ function checkGiven(world: World, held: ServerRows): void {
 export type Given = Extract<SyncAnswer['verdicts'][number], { verdict: 'stored' | 'already' }>;
 
 /** What must hold once all is healed and still: nothing waits, and phones and server say the same. */
+/**
+ * With the network and the server well again, a page that is left alone finds out who is signed in and sends
+ * all it has; only an edit of a run that another phone has yet to send may wait.
+ */
+export async function checkDrainedAlone(world: World): Promise<void> {
+  await checkAlways(world);
+  const held = (await serverRows(world))!;
+  for (const phone of world.phones) {
+    const me = phone.disk
+      .rows<{ key: string; content: Me }>(`${phone.name}/swaymark`, 'rows')
+      .find(({ key }) => key === 'me');
+    const owner = ownerKey(me?.content ?? null);
+    const pages = phone.tabs.filter((tab) => tab !== null).map(({ page }) => page.session);
+    const isHere = pages.filter((session) => session.me && ownerKey(session.me) === owner);
+    must(
+      isHere.every(({ standing }) => standing !== 'unknown'),
+      () => `a page of ${owner} on phone ${phone.index} still does not know whether it is signed in`,
+    );
+    if (!isHere.some(({ standing }) => standing === 'confirmed')) continue;
+    const store = storesOf(phone).find((one) => one.owner === owner);
+    const waiting = [...(store?.runs ?? []), ...(store?.edits ?? []).filter(({ run_id }) => held.runs.has(run_id))];
+    for (const { id, state } of waiting)
+      must(state !== 'waiting', () => `${id} of ${owner} still waits on phone ${phone.index}`);
+  }
+}
+
 export async function checkHealed(world: World): Promise<void> {
   await checkAlways(world);
   const held = (await serverRows(world))!;

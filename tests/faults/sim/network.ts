@@ -47,6 +47,7 @@ export class Network {
     private readonly time: VirtualTime,
     private readonly server: SimServer,
     private readonly onAnswer: (bytes: Buffer) => void,
+    private readonly note: (what: string) => void,
   ) {}
 
   /** The next exchange meets this. */
@@ -71,6 +72,7 @@ export class Network {
       body: typeof init.body === 'string' ? init.body : '',
     });
     const fault: Fault | null = this.isOff ? { kind: 'refused' } : (this.coming.shift() ?? this.weather());
+    this.note(`${init.method ?? 'GET'} ${path} ${fault?.kind ?? ''}`);
     const [there, back] = fault?.kind === 'slow' ? [fault.there_ms, fault.back_ms] : [WAY_MS, WAY_MS];
 
     const hear = (bytes: Buffer | null) =>
@@ -82,6 +84,7 @@ export class Network {
         if (!answer) return void reject();
         for (const set of answer.headers.getSetCookie()) this.keepCookie(set);
         if (tab.endsAt('answered', path)) return;
+        this.note(`${path} ${answer.status}`);
         outcome.resolve(response(answer.status, answer.headers, answer.isWhole ? answer.text : null));
       });
     const deliver = async (part = 1) => {

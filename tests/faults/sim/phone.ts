@@ -18,7 +18,8 @@ export class Phone {
     readonly world: World,
     readonly index: number,
   ) {
-    this.network = new Network(world.time, world.server, (bytes) => world.noteAnswer(bytes));
+    const note = (what: string) => world.note(`phone ${index} ${what}`);
+    this.network = new Network(world.time, world.server, (bytes) => world.noteAnswer(bytes), note);
     const kept = new Map<string, string>();
     this.localStorage = { getItem: (key) => kept.get(key) ?? null, setItem: (key, text) => void kept.set(key, text) };
   }

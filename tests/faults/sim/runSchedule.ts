@@ -3,8 +3,13 @@ import type { TabCode } from './tabCode';
 import type { School } from './template';
 import { World } from './world';
 
-/** One schedule in a world of its own, from its first command to the end of healing; throws what was broken and when. */
-export async function runSchedule(code: TabCode, school: School, seed: number, commands: Command[]): Promise<void> {
+/**
+ * One schedule in a world of its own, from its first command to the end of healing.
+ *
+ * @returns what happened, in order
+ * @throws  what was broken, and when
+ */
+export async function runSchedule(code: TabCode, school: School, seed: number, commands: Command[]): Promise<string[]> {
   const world = new World(code, school, seed);
   let at = 'at the start';
   try {
@@ -20,6 +25,7 @@ export async function runSchedule(code: TabCode, school: School, seed: number, c
     }
     at = 'after healing';
     await world.heal();
+    return world.course;
   } catch (cause) {
     throw new Error(`${at}: ${cause instanceof Error ? cause.message : String(cause)}`, { cause });
   } finally {

@@ -22,6 +22,7 @@ export const TAB_POINTS = {
   after_mark: { moment: 'complete', stores: 'edits runs' },
   in_feed: { moment: 'request', stores: 'analyses edits meta runs' },
   in_claim_or_epoch: { moment: 'request', stores: 'edits meta runs' },
+  after_claim_or_epoch: { moment: 'complete', stores: 'edits meta runs' },
 } as const satisfies Record<string, { moment: TabMoment; stores?: string; with?: string }>;
 type TabMoment = TransactionMoment | 'sending' | 'answered';
 export type TabPoint = keyof typeof TAB_POINTS;
@@ -73,6 +74,7 @@ export class Tab {
   kill(): void {
     if (this.isDead) return;
     this.isDead = true;
+    this.phone.world.note(`a tab of phone ${this.phone.index} ends`);
     this.disk.kill();
     for (const timer of this.timers) this.phone.world.time.cancel(timer);
     for (const exchange of this.exchanges) exchange.leave();

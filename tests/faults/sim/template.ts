@@ -1,4 +1,4 @@
-import { cpSync, mkdtempSync } from 'node:fs';
+import { cpSync, mkdtempSync, readdirSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { ClassView, Me } from '@shared/schemas/accounts';
@@ -47,8 +47,9 @@ export async function makeSchool(): Promise<School> {
   };
   await server.running.stop();
   const dataDir = mkdtempSync(join(tmpdir(), 'swaymark-school-'));
-  for (const file of ['swaymark.sqlite3', 'sessions.sqlite3', 'session-secret'])
-    cpSync(join(server.dataDir, file), join(dataDir, file));
+  for (const file of readdirSync(server.dataDir))
+    if (/^(swaymark|sessions)\.sqlite3(-wal)?$|^session-secret$/.test(file))
+      cpSync(join(server.dataDir, file), join(dataDir, file));
   await server.stop();
   return { dataDir, people };
 }

@@ -3,7 +3,15 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { v7 as uuidv7 } from 'uuid';
 import { ownerKey } from '@/db/localStore';
-import { Broken, checkAlways, checkHealed, storesOf, type Given, type StoreRows } from './invariants';
+import {
+  Broken,
+  checkAlways,
+  checkDrainedAlone,
+  checkHealed,
+  storesOf,
+  type Given,
+  type StoreRows,
+} from './invariants';
 import { readAnswer } from './httpText';
 import { MadeThings, type Made } from './made';
 import { Phone } from './phone';
@@ -22,6 +30,8 @@ const LONGEST_WAY_MS = 95_000;
 /** Enough for a few rounds on a good network. */
 const VISIT_MS = 3_000;
 const MOST_TURNS = 4;
+/** The server comes back by itself within that. */
+const LONGEST_DOWN_MS = 31_000;
 let worlds = 0;
 
 /** One schedule's world: a server, two phones, and what was made in it. */
@@ -40,6 +50,8 @@ export class World {
   private restart_ms = RESTART_MS;
   private readonly starting = new Set<Promise<void>>();
   private readonly healed = new Set<string>();
+  /** What happened, in order, as far as a seed decides it. */
+  readonly course: string[] = [];
   private trouble: unknown;
 
   constructor(
@@ -59,6 +71,10 @@ export class World {
     return START_WALL_MS + Math.floor(this.time.now());
   }
 
+  note(what: string): void {
+    this.course.push(`${this.time.now()} ${what}`);
+  }
+
   newId(): string {
     return uuidv7({
       msecs: this.wall(),
@@ -72,6 +88,7 @@ export class World {
   }
 
   private startLater(): void {
+    this.note('the server ends');
     this.time.after(this.restart_ms, () => this.startNow());
     this.restart_ms = RESTART_MS;
   }
@@ -167,8 +184,10 @@ export class World {
       phone.network.clear();
       for (const tab of phone.tabs) tab?.disarm();
     }
-    await this.pass(LONGEST_WAY_MS);
+    await this.pass(LONGEST_DOWN_MS);
     if (!this.server.isUp) await this.startServer();
+    await this.pass(LONGEST_WAY_MS);
+    await checkDrainedAlone(this);
     for (let turn = 1; ; turn += 1) {
       for (const phone of this.phones)
         for (const name of this.peopleOf(phone))

@@ -51,6 +51,26 @@ it('a claim cut off before the guest let go is finished by the next, with no dou
   expect(await countGuestRuns()).toBe(0);
 });
 
+it('what one account began to move is left alone by the next, and its edits made meanwhile with it', async () => {
+  const made = await guestWithRuns();
+  const guest = new LocalStore('guest');
+  const [runs, edits] = [await guest.runs.toArray(), await guest.edits.toArray()];
+  const [store, other] = [new LocalStore(ownerKey(ann)), new LocalStore(ownerKey(ben))];
+  await guest.meta.put({
+    key: 'claims',
+    content: Object.fromEntries([...runs, ...edits].map(({ id }) => [id, store.owner])),
+  });
+  const later = await addEdit(guest, rawEdit(made[0]!.id, { kind: 'set_swings', swings: 22 }));
+  const free = await addRun(guest, rawRun(), NOWHERE);
+  guest.close();
+  expect(await countGuestRuns()).toBe(1);
+
+  expect(await claimGuest(other, ben, true)).toBe(1);
+  expect((await outbox(other, new Set(), 50)).map(({ id }) => id)).toEqual([free.id]);
+  expect(await claimGuest(store, ann, true, 'begun')).toBe(2);
+  expect((await outbox(store, new Set(), 50)).map(({ id }) => id)).toEqual([...made, later].map(({ id }) => id));
+});
+
 it('a cut-short recording comes along with its events, unless one is being timed', async () => {
   const guest = new LocalStore('guest');
   await guest.recordings.add({
