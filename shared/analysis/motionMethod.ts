@@ -113,6 +113,7 @@ function fitOf(view: RunView, { data, fit, decayKnown, doubt }: Found): Fit {
     lag1: timing.lag1,
     elapsed,
     residuals: fit.residuals,
+    basis: timing.basis,
     missing: decayKnown ? [] : ['end_amplitude'],
     motion: motionOf(fit),
   };
@@ -151,7 +152,7 @@ function timingOf(view: RunView, data: MotionData, fit: MotionFit) {
   const shares: BudgetLine[] = isUsual
     ? [{ term: data.gate ? 'timing' : 'hand', type: 'B', u: hypot(usual, byBlocks), dof: null }]
     : byScatter;
-  return { shares: [...shares, reading], jitter: found?.jitter ?? null, lag1: found?.lag1 ?? null };
+  return { shares: [...shares, reading], jitter: found?.jitter ?? null, lag1: found?.lag1 ?? null, basis };
 }
 
 function blockShare(fit: MotionFit, place: number): number {
