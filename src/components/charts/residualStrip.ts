@@ -1,3 +1,4 @@
+import { plainLine } from '@shared/analysis/pictures/plainLine';
 import type { Analysis } from '@shared/schemas/analysis';
 import type { FlagCode } from '@shared/schemas/edit';
 import type { Shape } from './markers';
@@ -68,9 +69,19 @@ export function stripFinding(analysis: Analysis): Finding {
   };
 }
 
-/** Half height of the strip, ms: holds every residual and the ±2 s.d. band, with room to spare. */
-export function stripReach_ms(points: StripPoint[], jitter_s: number | null): number {
-  const largest = Math.max(0, ...points.map((point) => Math.abs(point.residual_ms ?? 0)));
+/** Where the plain line, which knows of no amplitude, expects each mark against the motion, ms, by mark. */
+export function plainLine_ms(analysis: Analysis): Map<number, number> {
+  return new Map(plainLine(analysis)?.map(({ mark, bend }) => [mark, bend * 1000]));
+}
+
+/** How far the plain line bows away from the motion, ms; null when there is nothing to compare. */
+export function largestBow_ms(bows: Map<number, number>): number | null {
+  return bows.size === 0 ? null : Math.max(...[...bows.values()].map(Math.abs));
+}
+
+/** Half height of the strip, ms: holds every residual, the ±2 s.d. band, and the bow if shown, with room to spare. */
+export function stripReach_ms(points: StripPoint[], jitter_s: number | null, bow_ms = 0): number {
+  const largest = Math.max(bow_ms, ...points.map((point) => Math.abs(point.residual_ms ?? 0)));
   return 1.15 * Math.max(largest, 2.4 * (jitter_s ?? 0) * 1000, 5);
 }
 

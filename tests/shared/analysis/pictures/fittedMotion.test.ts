@@ -26,7 +26,7 @@ function stated(amplitude_deg: number, swings: number, parts: Partial<Motion> = 
   return { motion, small_period_s, swings };
 }
 
-test('turning points of the reference runs are met, angle and time, by what an analysis states of them', () => {
+test('the passes of the reference runs are met, time and speed, by what an analysis states of them', () => {
   // tests/reference/damped.json: 190-bit arithmetic, outside of this program.
   const runs = damped.runs.filter(({ amplitude_deg, stuck }) => Number(amplitude_deg) <= 150 && !stuck);
   expect(runs.length).toBeGreaterThan(3);

@@ -3,7 +3,7 @@ import { analyseRun } from '@shared/analysis/analyseRun';
 import { plainLine } from '@shared/analysis/pictures/plainLine';
 import type { Analysis } from '@shared/schemas/analysis';
 import { analysisOf } from '../../../factories/analysis';
-import { rawTapRun, sealed } from '../../../factories/rawRuns';
+import { sealed } from '../../../factories/rawRuns';
 import { timingCase } from '../../../factories/timingCases';
 
 const motion = analyseRun({ run: sealed(timingCase('simple-30').run), edits: [] }).motion;
