@@ -91,9 +91,7 @@ const fastest = (amplitude: number, angularFrequency: number) => 2 * angularFreq
 function instantsOf({ marks, swings, period_s }: Analysis): Omit<MotionMark, 'angle_deg' | 'rate_deg_s'>[] {
   if (marks.length > 0) {
     return marks.flatMap(({ mark, swing, time_s, residual_s }) =>
-      swing === null
-        ? []
-        : [{ mark, swing, time_s, predicted_s: residual_s === null ? null : time_s - residual_s }],
+      swing === null ? [] : [{ mark, swing, time_s, predicted_s: residual_s === null ? null : time_s - residual_s }],
     );
   }
   // A keyed total is two instants: start and stop.
