@@ -3,6 +3,7 @@ import { CLOCK_RATE_U, HAND_U } from '@shared/analysis/timingShares';
 import type { Analysis, BudgetLine } from '@shared/schemas/analysis';
 import type { RunView } from '@shared/timing/runView';
 import { formatMeasured, formatSeconds } from '@shared/units/formatMeasured';
+import { msPlaces } from '@shared/units/msPlaces';
 import { useSettings } from '@/stores/useSettings';
 import { useAmplitudeWords } from './useAmplitudeWords';
 
@@ -109,9 +110,15 @@ export function useBudgetWords() {
   ): string[] {
     if (type === 'B') return [t('budget.timing.gateFew', named)];
     const { marks_used: marks, jitter_s, lag1 } = analysis;
+    if (jitter_s === null || marks < 2) return [t('budget.timing.allowed', named)];
     const step = view.swingsPerMark;
-    const line = ((jitter_s ?? 0) * Math.sqrt(12 / (marks ** 3 - marks))) / step;
-    const said = { ...named, marks, jitter: decimal((jitter_s ?? 0) * 1000, isFine(jitter_s) ? 3 : 1), line: ms(line) };
+    const line = (jitter_s * Math.sqrt(12 / (marks ** 3 - marks))) / step;
+    const said = {
+      ...named,
+      marks,
+      jitter: decimal(jitter_s * 1000, Math.max(1, msPlaces(jitter_s))),
+      line: ms(line),
+    };
     return [
       lag1 === null ? t('budget.timing.marksFew', said) : t('budget.timing.marks', { ...said, lag1: decimal(lag1, 2) }),
       t('budget.timing.allowed', named),
@@ -132,9 +139,6 @@ export function useBudgetWords() {
 
   return { lineWords };
 }
-
-/** A gate's scatter is too small for tenths of a millisecond. */
-const isFine = (jitter_s: number | null) => jitter_s !== null && jitter_s < 0.001;
 
 /** Width of a gate's flag, µm; null where the amplitude was read by eye. */
 const widthOf = ({ capture }: RunView) =>

@@ -47,10 +47,17 @@ export function useDecayWords() {
       ...(decrement
         ? [
             { name: t('pictures.decay.decrement'), said: measured(decrement.logarithmicDecrement) },
-            { name: t('pictures.decay.quality'), said: measured(decrement.qualityFactor) },
+            { name: t('pictures.decay.quality'), said: quality(decrement.logarithmicDecrement) },
           ]
         : []),
     ];
+  }
+
+  /** Q = π/δ; where δ is hardly told from nothing, only what Q is above. */
+  function quality({ value, u }: { value: number; u: number }): string {
+    const q = Math.PI / value;
+    if (u > value / 4) return t('pictures.decay.above', { n: roughly(Math.PI / (value + 2 * u)) });
+    return formatMeasured(q, (2 * u * q) / value, { decimalMark: settings.decimalMark }).text;
   }
 
   /** Two digits are as many as a guess at the future carries. */

@@ -55,7 +55,7 @@ export interface Stretch {
 }
 
 /** More swings than this side by side are no curve any more. */
-const MOST_SWINGS = 24;
+const MOST_SWINGS = 32;
 /** Swings shown around a mark. */
 const CLOSE_SWINGS = 4;
 const SAMPLES_A_SWING = 32;
