@@ -7,7 +7,7 @@ import type { RawRun } from '@shared/schemas/run';
 import { foldRun } from '@shared/timing/foldRun';
 import HowGot from '@/components/run/HowGot.vue';
 import { useBudgetWords, type BudgetOf } from '@/composables/useBudgetWords';
-import { rawGateRun, rawKeyedRun, rawTapRun, sealed } from '../../../factories/rawRuns';
+import { rawGateRun, rawKeyedRun, rawTapRun, sealed, stringRig } from '../../../factories/rawRuns';
 import { timingCase } from '../../../factories/timingCases';
 import { mountApp } from '../../support/mountApp';
 
@@ -85,7 +85,7 @@ describe('a line of the budget', () => {
   });
 
   it('of g gives what it is in T₀ and what that counts', async () => {
-    const { wrapper, term, analysis } = openHowGot(timingCase('every-5th').run);
+    const { wrapper, term, analysis } = openHowGot({ ...timingCase('every-5th').run, rig: stringRig() });
     await term('Scatter of the marks', 1).trigger('click');
     const inT0 = analysis.budget.find(({ term }) => term === 'timing')!.u * 1000;
     expect(wrapper.find('.budget__said').text()).toContain(`${Number(inT0.toPrecision(2))} ms of T₀ count 2g/T₀ times`);
