@@ -35,7 +35,9 @@ it('the headline has two digits of the spread', () => {
 });
 
 it('one bench alone takes the places of its own uncertainty', () => {
-  expect(periodPlaces(boardModel([point(1, { small_period_s: { value: 2.01, u: 0.03, expanded_u: 2 * 0.03 } })]).summary!)).toBe(3);
+  expect(
+    periodPlaces(boardModel([point(1, { small_period_s: { value: 2.01, u: 0.03, expanded_u: 2 * 0.03 } })]).summary!),
+  ).toBe(3);
 });
 
 it('axis numbers stay at a fortieth of the picture on 4:3 and readable on a phone', () => {
