@@ -89,6 +89,14 @@ export const feedAnswer = (items: FeedItem[], cursor: number, over: object = {})
   ...over,
 });
 
+/** A page of the feed as it stands once it was read. */
+export const feedPage = (items: FeedItem[], cursor: number, over: object = {}) => ({
+  ...feedAnswer(items, cursor),
+  reader: 'this version',
+  not_understood: [] as number[],
+  ...over,
+});
+
 export function feedRun(run: RawRun): Extract<FeedItem, { type: 'run' }> {
   const raw = canonicalText(run);
   const { server_seq, ...rest } = receipt();
