@@ -16,7 +16,8 @@ router.beforeEach(async (to) => {
   const session = useSession();
   await session.ready;
   if (!session.isStaff) return { name: 'signIn', query: { to: to.fullPath } };
-  return needs === 'coordinator' && session.me?.kind !== 'coordinator' ? { name: 'desk' } : true;
+  const may = needs === 'staff' ? session.home === '/desk' : session.me?.kind === needs;
+  return may || session.home;
 });
 
 /** Where the page begins for somebody who listens to it. */
