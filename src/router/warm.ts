@@ -1,3 +1,5 @@
+import { loadTexts } from '@/i18n';
+
 /**
  * Loads what the road of a run needs, once the page has nothing better to do: after an update in another
  * tab, files of this version are gone from the cache and from the server.
@@ -5,6 +7,7 @@
 export function warmFieldPages(whenIdle: (work: () => void) => void = idle): void {
   whenIdle(() => {
     const parts = [
+      loadTexts(),
       import('@/layouts/FieldLayout.vue'),
       import('@/layouts/PadLayout.vue'),
       import('@/pages/BenchPage.vue'),
