@@ -50,6 +50,7 @@ export function keepBoard(store: LocalStore, pass: string, head: BoardHead, poin
 }
 
 /** A row as it was kept; those of earlier versions hold no U, and had twice u shown. */
-function pointOf({ pass: _, small_period_s: kept, ...point }: BoardPoint & { pass: string }): BoardPoint {
-  return { ...point, small_period_s: kept && { ...kept, expanded_u: kept.expanded_u ?? 2 * kept.u } };
+function pointOf({ run_id, bench, small_period_s: kept, length_m, open_flags }: BoardPoint): BoardPoint {
+  const small_period_s = kept && { ...kept, expanded_u: kept.expanded_u ?? 2 * kept.u };
+  return { run_id, bench, small_period_s, length_m, open_flags };
 }
