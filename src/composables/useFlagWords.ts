@@ -1,5 +1,6 @@
 import { useI18n } from 'vue-i18n';
 import type { Flag } from '@shared/schemas/analysis';
+import type { KeyedTotalCapture } from '@shared/schemas/run';
 import { formatSeconds } from '@shared/units/formatMeasured';
 import { useSettings } from '@/stores/useSettings';
 
@@ -20,15 +21,18 @@ export function useFlagWords() {
     return formatSeconds(seen, { places: 2, decimalMark });
   }
 
-  function seenWords(flag: Flag): string {
+  /** `saidFirst` is what the counter of a keyed total said at the first pass: asked once, it is not asked again. */
+  function seenWords(flag: Flag, saidFirst?: KeyedTotalCapture['first_count']): string {
+    const key = `run.flag.${flag.code}.${keyOf(flag, saidFirst)}`;
     const numbers = Object.fromEntries(Object.entries(flag.seen).map(([name, seen]) => [name, shown(name, seen)]));
-    return t(`run.flag.${flag.code}.${variantOf(flag)}`, { ...numbers, mark: flag.mark ?? 0 }, flag.seen.readings ?? 1);
+    return t(key, { ...numbers, mark: flag.mark ?? 0 }, flag.seen.readings ?? 1);
   }
   return { seenWords };
 }
 
 /** Which of a flag's sentences fits what was seen. */
-function variantOf({ seen }: Flag): string {
+function keyOf({ code, seen }: Flag, saidFirst?: KeyedTotalCapture['first_count']): string {
+  if (code === 'count_from_one' && (saidFirst === 'one' || saidFirst === 'zero')) return `seenSaid.${saidFirst}`;
   if ((seen.late_ms ?? 0) < 0) return 'seenEarly';
   if (seen.scatter_ms !== undefined) return 'seenEven';
   if (seen.g_m_s2 !== undefined) return 'seenGravity';

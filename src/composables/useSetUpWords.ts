@@ -16,7 +16,7 @@ export function useSetUpWords() {
   function rigWords({ rig }: RecordingPlan): string[] {
     if (!rig) return [];
     const length = pivotToCentre(rig);
-    const kind = t(`rig.kind.${rig.kind}`);
+    const kind = t(`common.kind.${rig.kind}`);
     return [length ? t('pad.setUp.length', { kind, length: `${number(length.value, 4)} m` }) : kind];
   }
 

@@ -1,10 +1,24 @@
 import { createI18n } from 'vue-i18n';
+import { byName } from './texts';
 
-/** Every message file; its name is the top key: en/pad.json holds `pad.…`. */
-const files = import.meta.glob<{ default: Record<string, unknown> }>('./en/*.json', { eager: true });
-
-const en = Object.fromEntries(
-  Object.entries(files).map(([path, file]) => [path.slice('./en/'.length, -'.json'.length), file.default]),
+/** What the pad says, and what stands around every page: nothing else is fetched before a tap can be. */
+const firstTexts = byName(
+  import.meta.glob(['./en/common.json', './en/errors.json', './en/kit.json', './en/pad.json'], { eager: true }),
 );
 
-export const i18n = createI18n({ legacy: false, locale: 'en', fallbackLocale: 'en', messages: { en } });
+export const i18n = createI18n({
+  legacy: false,
+  locale: 'en',
+  fallbackLocale: 'en',
+  messages: { en: firstTexts },
+});
+
+let isWhole = false;
+
+/** Brings the messages of all other pages. Asked before each of them is opened; a failure is asked again. */
+export async function loadTexts(): Promise<void> {
+  if (isWhole) return;
+  const { laterTexts } = await import('./laterTexts');
+  i18n.global.setLocaleMessage('en', { ...firstTexts, ...laterTexts });
+  isWhole = true;
+}

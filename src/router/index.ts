@@ -1,5 +1,6 @@
 import { createRouter, createWebHistory } from 'vue-router';
 import { notePartMissing } from '@/composables/useAppUpdate';
+import { loadTexts } from '@/i18n';
 import { useSession } from '@/stores/useSession';
 import { routes } from './routes';
 
@@ -16,7 +17,13 @@ router.beforeEach(async (to) => {
   const session = useSession();
   await session.ready;
   if (!session.isStaff) return { name: 'signIn', query: { to: to.fullPath } };
-  return needs === 'coordinator' && session.me?.kind !== 'coordinator' ? { name: 'desk' } : true;
+  const may = needs === 'staff' ? session.home === '/desk' : session.me?.kind === needs;
+  return may || session.home;
+});
+
+/** The pad has its texts from the start; the others come before the first page that shows them. */
+router.beforeEach(async (to) => {
+  if (to.name !== 'pad') await loadTexts();
 });
 
 /** Where the page begins for somebody who listens to it. */

@@ -1,7 +1,9 @@
 import { expect, it } from 'vitest';
 import { analysisOf } from '../../factories/analysis';
 import { stripFinding, stripPoints, stripReach_ms } from '@/components/charts/residualStrip';
-import { i18n } from '@/i18n';
+import { i18n, loadTexts } from '@/i18n';
+
+await loadTexts();
 
 const caption = (analysis: Parameters<typeof stripFinding>[0]) => {
   const { key, named } = stripFinding(analysis);

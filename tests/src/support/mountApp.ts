@@ -3,8 +3,11 @@ import { createPinia, setActivePinia } from 'pinia';
 import { Quasar } from 'quasar';
 import type { Component } from 'vue';
 import { createMemoryHistory, createRouter, type RouteLocationRaw } from 'vue-router';
-import { i18n } from '@/i18n';
+import { i18n, loadTexts } from '@/i18n';
 import { routes } from '@/router/routes';
+
+// The router brings them before the first page; here there may be no page.
+await loadTexts();
 
 /** Mounts a component the way main.ts mounts the app: real stores, real messages, real routes. */
 export function mountApp(component: Component, props: Record<string, unknown> = {}, router = newRouter()) {
