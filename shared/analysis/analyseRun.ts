@@ -69,11 +69,15 @@ export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<
 }
 
 /**
- * Over what the analysis was computed from and nothing else: a note, or an edit that was made and
- * withdrawn again, changes no figure, so it makes no other analysis.
+ * Over what the analysis was computed from and nothing else: a note, setting the run aside, or an edit
+ * that was made and withdrawn again changes no figure, so it makes no other analysis.
  */
 function inputDigest(run: Sealed<RawRun>, edits: Sealed<RawEdit>[]): string {
-  const counting = new Set(inForce(edits.map(({ content }) => content)).filter(({ change }) => change.kind !== 'note'));
+  const counting = new Set(
+    inForce(edits.map(({ content }) => content)).filter(
+      ({ change: { kind } }) => kind !== 'note' && kind !== 'set_aside',
+    ),
+  );
   const digests = edits.filter(({ content }) => counting.has(content)).map(({ digest }) => digest);
   return digestOf(canonicalText({ run: run.digest, edits: digests, method: METHOD.id }));
 }

@@ -15,12 +15,13 @@ import type { RunView, ViewAmplitude } from './runView';
  * @example foldRun(run, [edit({ kind: 'leave_out_mark', mark: 12 })]).marks[12].leftOut // true
  */
 export function foldRun(run: RawRun, edits: RawEdit[]): RunView {
-  const changes = inForce(edits.filter((edit) => edit.run_id === run.id)).map((edit) => edit.change);
+  const standing = inForce(edits.filter((edit) => edit.run_id === run.id));
+  const changes = standing.map((edit) => edit.change);
   const halved = changes.some((change) => change.kind === 'reread_as_half_swings');
   const capture = run.capture;
   const swingsPerMark = rawSwingsPerMark(run) * (halved ? 0.5 : 1);
   const setSwings = changes.findLast((change) => change.kind === 'set_swings')?.swings;
-  const described = describe(run, changes);
+  const described = { ...describe(run, changes), setAside: setAside(standing) };
 
   if (capture.kind === 'keyed_total') {
     const counted = capture.counted_to - (capture.first_count === 'one' ? 1 : 0);
@@ -68,6 +69,12 @@ export function inForce(edits: RawEdit[]): RawEdit[] {
     else kept.unshift(edit);
   }
   return kept;
+}
+
+/** Why a run does not count: the last word that sets it aside; null while it counts. */
+export function setAside(standing: RawEdit[]): RunView['setAside'] {
+  const edit = standing.findLast(({ change }) => change.kind === 'set_aside');
+  return edit ? { editId: edit.id, reason: edit.reason } : null;
 }
 
 function rawSwingsPerMark(run: RawRun): number {

@@ -1,5 +1,6 @@
 import { useI18n } from 'vue-i18n';
 import type { Flag } from '@shared/schemas/analysis';
+import type { KeyedTotalCapture } from '@shared/schemas/run';
 import { formatSeconds } from '@shared/units/formatMeasured';
 import { useSettings } from '@/stores/useSettings';
 
@@ -14,10 +15,16 @@ export function useFlagWords() {
     return formatSeconds(seen, { places: 2, decimalMark: settings.decimalMark });
   }
 
-  function seenWords(flag: Flag): string {
-    const key = (flag.seen.late_ms ?? 0) < 0 ? 'seenEarly' : 'seen';
+  /** `saidFirst` is what the counter of a keyed total said at the first pass: asked once, it is not asked again. */
+  function seenWords(flag: Flag, saidFirst?: KeyedTotalCapture['first_count']): string {
+    const key = keyOf(flag, saidFirst);
     const numbers = Object.fromEntries(Object.entries(flag.seen).map(([name, seen]) => [name, shown(name, seen)]));
     return t(`run.flag.${flag.code}.${key}`, { ...numbers, mark: flag.mark ?? 0 });
   }
   return { seenWords };
+}
+
+function keyOf({ code, seen }: Flag, saidFirst?: KeyedTotalCapture['first_count']): string {
+  if (code === 'count_from_one' && (saidFirst === 'one' || saidFirst === 'zero')) return `seenSaid.${saidFirst}`;
+  return (seen.late_ms ?? 0) < 0 ? 'seenEarly' : 'seen';
 }

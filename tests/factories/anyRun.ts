@@ -148,6 +148,7 @@ export const anyChange: fc.Arbitrary<EditChange> = fc.oneof(
     flag: fc.constantFrom(...FLAG_CODES),
     mark: fc.option(mark),
   }),
+  fc.record({ kind: fc.constant('set_aside' as const) }),
   fc.record({
     kind: fc.constant('withdraw' as const),
     edit_id: fc.integer({ min: 1, max: 8 }).map((n) => uuid(0xed000 + n)),

@@ -115,7 +115,7 @@ function paintBars(brush: Brush, placed: { dot: BenchDot; y: number }[], colour:
   context.fillStyle = colour;
   for (const { dot, y } of placed) {
     const line = Math.round(y - thick / 2);
-    const ends = [brush.x(dot.period_s - 2 * dot.u_s), brush.x(dot.period_s + 2 * dot.u_s)] as const;
+    const ends = [brush.x(dot.period_s - dot.expanded_u_s), brush.x(dot.period_s + dot.expanded_u_s)] as const;
     const [from, to] = [Math.round(Math.max(left, ends[0])), Math.round(Math.min(left + width, ends[1]))];
     context.fillRect(from, line, to - from, thick);
     for (const end of ends) {
@@ -129,7 +129,7 @@ function paintBars(brush: Brush, placed: { dot: BenchDot; y: number }[], colour:
 /** Words to the right of a mark; to the left of the edge when there is no room. */
 function paintBeside(brush: Brush, label: string, dot: BenchDot, y: number, { type, marker }: LaneSizes): void {
   const { context, theme, px, left, width } = brush;
-  const from = Math.max(brush.x(dot.period_s + 2 * dot.u_s), brush.x(dot.period_s) + px(marker));
+  const from = Math.max(brush.x(dot.period_s + dot.expanded_u_s), brush.x(dot.period_s) + px(marker));
   context.save();
   context.fillStyle = theme.ink;
   context.font = `${px(type * 0.85)}px ${theme.font}`;

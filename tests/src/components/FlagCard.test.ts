@@ -85,3 +85,15 @@ it('whoever may not edit sees the flag and no choices', () => {
   expect(wrapper.findAll('button')).toEqual([]);
   wrapper.unmount();
 });
+
+it.each([
+  ['one', 'the “one” said at the first pass taken off already'],
+  ['zero', 'with “zero” said at the first pass'],
+  ['not_sure', 'Was “one” said at the first pass?'],
+] as const)('a count that does not fit does not ask again what was answered with %s', (saidFirst, words) => {
+  const { analysis, flag } = found('count_from_one');
+  const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: true, saidFirst });
+  expect(wrapper.text()).toContain(words);
+  if (saidFirst !== 'not_sure') expect(wrapper.text()).not.toContain('Was “one”');
+  wrapper.unmount();
+});

@@ -1,5 +1,5 @@
 import 'fake-indexeddb/auto';
-import { flushPromises } from '@vue/test-utils';
+import { flushPromises, type VueWrapper } from '@vue/test-utils';
 import { afterEach, expect, it } from 'vitest';
 import { computed, defineComponent, h } from 'vue';
 import { analyseRun } from '@shared/analysis/analyseRun';
@@ -37,6 +37,14 @@ async function openSheet(parts: Partial<RawRun>) {
     await flushPromises();
   };
   return { wrapper, press, entry: () => useRuns().entry(raw.id)! };
+}
+const foldOf = (wrapper: VueWrapper, title: string) =>
+  wrapper.findAll('.fold-block').find((fold) => fold.find('summary').text() === title)!;
+async function openFold(wrapper: VueWrapper, title: string) {
+  await foldOf(wrapper, title).trigger('toggle');
+  await eventually(() => expect(foldOf(wrapper, title).find('.fold-block__in > *').text()).not.toContain('Fetching'));
+  await flushPromises();
+  return foldOf(wrapper, title);
 }
 plugIn(() => Promise.reject(new TypeError('no network')));
 const opened: { unmount(): void }[] = [];
@@ -109,7 +117,7 @@ it('a count that fits another number of swings is set by what the person types',
 it('a gate run shows its marks and its budget', async () => {
   const { wrapper } = await openSheet({ capture: gated(), rig: metreRig });
   expect(wrapper.findAll('.pass-table tbody tr')).toHaveLength(21);
-  expect(wrapper.find('.fold-block').text()).toContain('Share');
+  expect(foldOf(wrapper, 'How was this got?').text()).toContain('Share');
 });
 
 it('the table and the strip tell the same numbers', async () => {
@@ -131,4 +139,34 @@ it('the server agrees when every printed digit is the same, and a digest of othe
   expect(agreement(analysis, elsewhere(1e-15))).toBe('agrees');
   expect(agreement(analysis, elsewhere(period_s!.expanded_u))).toBe('differs');
   expect(agreement(analysis, { ...analysis, input_digest: 'f'.repeat(64) })).toBe('otherInputs');
+});
+
+it('folds of pictures are made when they are opened, not before', async () => {
+  const { wrapper } = await openSheet({ capture: tapped(), amplitudes: tenDegrees });
+  expect(foldOf(wrapper, 'The motion').text()).toBe('The motion');
+  expect((await openFold(wrapper, 'The motion')).text()).toContain('through the lowest point at up to');
+  expect((await openFold(wrapper, 'How the amplitude fell')).text()).toContain('In 20 swings the amplitude fell');
+});
+
+it('the decay fold asks for the end reading where there is none, and opens the form for it', async () => {
+  const { wrapper, entry } = await openSheet({ capture: tapped(), amplitudes: tenDegrees.slice(0, 1) });
+  const fold = await openFold(wrapper, 'How the amplitude fell');
+  await fold
+    .findAll('button')
+    .find((button) => button.text() === 'Give the amplitude at the end')!
+    .trigger('click');
+  await flushPromises();
+  const form = wrapper.find('form');
+  expect(form.text()).toContain('At the end, swing 20');
+  expect(document.activeElement!.closest('form')).toBe(form.element);
+  expect(entry().edits).toEqual([]);
+});
+
+it('without an amplitude both folds say what reading would bring them', async () => {
+  const { wrapper } = await openSheet({ capture: tapped() });
+  for (const title of ['The motion', 'How the amplitude fell']) {
+    const fold = await openFold(wrapper, title);
+    expect(fold.text()).toContain('Give the amplitude at the start: how far out the bob swung.');
+    expect(fold.find('figure').exists()).toBe(false);
+  }
 });

@@ -1,5 +1,5 @@
-import type { Analysis, Flag } from '@shared/schemas/analysis';
-import type { FlagCode } from '@shared/schemas/edit';
+import type { Analysis, Flag } from '../schemas/analysis';
+import type { FlagCode } from '../schemas/edit';
 
 /** Flags nobody has answered yet, in the order of the run. */
 export const openFlags = (analysis: Pick<Analysis, 'flags'>): Flag[] => analysis.flags.filter((flag) => !flag.answered);
