@@ -1,7 +1,6 @@
 import { mount } from '@vue/test-utils';
 import { createPinia, setActivePinia } from 'pinia';
 import { Quasar } from 'quasar';
-import { afterAll } from 'vitest';
 import type { Component } from 'vue';
 import { createMemoryHistory, createRouter, type RouteLocationRaw } from 'vue-router';
 import { i18n, loadTexts } from '@/i18n';
@@ -9,10 +8,6 @@ import { routes } from '@/router/routes';
 
 // The router brings them before the first page; here there may be no page.
 await loadTexts();
-
-/** A router begins with the page at '/', and what it loads must not be cut off by the end of the tests. */
-const begun: Promise<void>[] = [];
-afterAll(() => Promise.allSettled(begun));
 
 /** Mounts a component the way main.ts mounts the app: real stores, real messages, real routes. */
 export function mountApp(component: Component, props: Record<string, unknown> = {}, router = newRouter()) {
@@ -23,7 +18,6 @@ export function mountApp(component: Component, props: Record<string, unknown> = 
     attachTo: document.body,
     global: { plugins: [pinia, [Quasar, {}], i18n, router] },
   });
-  begun.push(router.isReady());
   return { wrapper, router };
 }
 
@@ -34,4 +28,9 @@ export async function mountPage(page: Component, at: RouteLocationRaw) {
   return mountApp(page, {}, router);
 }
 
-const newRouter = () => createRouter({ history: createMemoryHistory(), routes });
+/** Begins at an address of its own: the page at '/' would go on loading after a short test has ended. */
+function newRouter() {
+  const history = createMemoryHistory();
+  history.replace('/mounted');
+  return createRouter({ history, routes: [...routes, { path: '/mounted', component: { render: () => null } }] });
+}
