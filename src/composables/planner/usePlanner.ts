@@ -6,6 +6,7 @@ import {
   type TargetVerdict,
 } from '@shared/analysis/planner/judgePlan';
 import { predictPlan, type Prediction } from '@shared/analysis/planner/predictPlan';
+import type { TimingPlan } from '@shared/analysis/planner/timingPlan';
 import { reducedLength } from '@shared/physics/reducedLength';
 import type { RecordingPlan } from '@/db/localStore';
 import { radians } from '@shared/units/angle';
@@ -14,8 +15,8 @@ import { planOf, USUAL_FORM, type PlannerForm } from './plannerForm';
 /** What a filled-in planner says. `wanted` is what the verdict was asked about. */
 export type PlannerOutcome =
   | { kind: 'unfilled' }
-  | { kind: 'target'; prediction: Prediction | undefined; verdict: TargetVerdict; wanted: number }
-  | { kind: 'effect'; prediction: Prediction | undefined; verdict: EffectVerdict; wanted: number };
+  | { kind: 'target'; plan: TimingPlan; prediction: Prediction | undefined; verdict: TargetVerdict; wanted: number }
+  | { kind: 'effect'; plan: TimingPlan; prediction: Prediction | undefined; verdict: EffectVerdict; wanted: number };
 
 /** Typing goes on while a plan is weighed, which takes a tenth of a second on a slow phone. */
 const QUIET_MS = 150;
@@ -81,6 +82,7 @@ function weigh(form: PlannerForm): PlannerOutcome {
     const otherAmplitude = radians(form.other_mdeg / 1000);
     return {
       kind: 'effect',
+      plan,
       prediction,
       verdict: judgeAmplitudeEffect(plan, { otherAmplitude }),
       wanted: otherAmplitude,
@@ -89,5 +91,5 @@ function weigh(form: PlannerForm): PlannerOutcome {
   if (form.target_percent === null) return { kind: 'unfilled' };
   const wanted = form.target_percent / 100;
   const of = form.goal === 'gravity' ? 'gravity' : 'smallPeriod';
-  return { kind: 'target', prediction, verdict: judgeTarget(plan, { of, relative: wanted }), wanted };
+  return { kind: 'target', plan, prediction, verdict: judgeTarget(plan, { of, relative: wanted }), wanted };
 }
