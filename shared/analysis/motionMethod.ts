@@ -15,12 +15,12 @@ import { exp } from '../physics/elementary';
 import { hypot } from '../statistics/hypot';
 
 /**
- * Method 'motion-1'. The pendulum's equation of motion, at full amplitude and with three terms of
+ * Method 'motion-2'. The pendulum's equation of motion, at full amplitude and with three terms of
  * damping, is fitted to marks, amplitude readings and block times; T0 is one of its unknowns. Where the
  * run does not hold enough for a motion it says what 'line-1' says.
  */
 export const motionMethod: Method = {
-  id: 'motion-1',
+  id: 'motion-2',
   fit(view) {
     const found = findMotion(view);
     return found ? fitOf(view, found) : lineMethod.fit(view);

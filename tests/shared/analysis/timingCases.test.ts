@@ -26,7 +26,7 @@ const faultsMended: Record<string, EditChange[]> = {
   'keyed-miscount': [{ kind: 'set_swings', swings: 19 }],
 };
 
-describe('motion-1', () => {
+describe('motion-2', () => {
   test.each([
     { id: 'simple-5', within: 0.002 },
     { id: 'simple-30', within: 0.002 },
