@@ -1,5 +1,5 @@
 import 'fake-indexeddb/auto';
-import { flushPromises, type VueWrapper } from '@vue/test-utils';
+import type { VueWrapper } from '@vue/test-utils';
 import { afterEach, beforeEach, expect, it } from 'vitest';
 import { useRunPlan } from '@/composables/useRunPlan';
 import PlannerPage from '@/pages/PlannerPage.vue';
@@ -23,15 +23,18 @@ const fieldOf = (label: string) =>
       .find((one) => one.text() === label)!
       .attributes('for')}"]`,
   );
+const beside = async () => {
+  await eventually(() => expect(wrapper.text()).toContain('Is this plan good enough?'));
+  return wrapper.findAll('.fold-block').find((one) => one.text().includes('Is this plan good enough?'))!;
+};
 const button = (name: RegExp) => wrapper.findAll('button').find((one) => name.test(one.text()));
 const quarterMetre = { ...metreRig, bob_diameter_um: null, length_readings: [{ to: 'centre' as const, um: 250_000 }] };
 
 it('the planner stands beside the plan of the rig page, weighs it, and hands its answer back', async () => {
   wrapper = mountApp(RigPage).wrapper;
-  await flushPromises();
+  const fold = await beside();
   const planned = fieldOf('Swings in the run');
   expect(planned.element.value).toBe('20');
-  const fold = wrapper.findAll('.fold-block').find((one) => one.text().includes('Is this plan good enough?'))!;
   await fold.trigger('toggle');
   await eventually(() => expect(button(/^Use 24 swings$/)).toBeDefined());
   // 1 m, 10°, 70 ms: n(n + 1)(n + 2) = 12 (70/2)² gives 24 (tests/reference/hand-timing.json).
@@ -44,8 +47,7 @@ it('the planner stands beside the plan of the rig page, weighs it, and hands its
 it('a field of the planner that cannot be read does not hold back the rig', async () => {
   const mounted = mountApp(RigPage);
   wrapper = mounted.wrapper;
-  await flushPromises();
-  const fold = wrapper.findAll('.fold-block').find((one) => one.text().includes('Is this plan good enough?'))!;
+  const fold = await beside();
   await fold.trigger('toggle');
   await eventually(() => expect(fold.text()).toContain('Standard uncertainty wanted'));
   await fieldOf('Standard uncertainty wanted').setValue('fine');
