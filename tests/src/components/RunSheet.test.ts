@@ -1,5 +1,5 @@
 import 'fake-indexeddb/auto';
-import { flushPromises } from '@vue/test-utils';
+import { flushPromises, type VueWrapper } from '@vue/test-utils';
 import { afterEach, expect, it, vi } from 'vitest';
 import { computed, defineComponent, h } from 'vue';
 import { analyseRun } from '@shared/analysis/analyseRun';
@@ -38,6 +38,14 @@ async function openSheet(parts: Partial<RawRun>) {
     await flushPromises();
   };
   return { wrapper, press, entry: () => useRuns().entry(raw.id)! };
+}
+const foldOf = (wrapper: VueWrapper, title: string) =>
+  wrapper.findAll('.fold-block').find((fold) => fold.find('summary').text() === title)!;
+async function openFold(wrapper: VueWrapper, title: string) {
+  await foldOf(wrapper, title).trigger('toggle');
+  await eventually(() => expect(foldOf(wrapper, title).find('.fold-block__in > *').text()).not.toContain('Fetching'));
+  await flushPromises();
+  return foldOf(wrapper, title);
 }
 plugIn(() => Promise.reject(new TypeError('no network')));
 const opened: { unmount(): void }[] = [];
@@ -110,7 +118,7 @@ it('a count that fits another number of swings is set by what the person types',
 it('a gate run shows its marks and its budget', async () => {
   const { wrapper } = await openSheet({ capture: gated(), rig: metreRig });
   expect(wrapper.findAll('.pass-table tbody tr')).toHaveLength(21);
-  expect(wrapper.find('.fold-block').text()).toContain('Share');
+  expect(foldOf(wrapper, 'How was this got?').text()).toContain('Share');
 });
 
 it('the table and the strip tell the same numbers', async () => {
@@ -169,4 +177,34 @@ it('saved as a file, a run with its edits reads back as it is here, for the comm
   expect(names[0]).toMatch(/^swaymark-run-\d{4}-\d\d-\d\d\.json$/);
   expect(analyseRun(read!)).toEqual(entry().analysis);
   vi.restoreAllMocks();
+});
+
+it('folds of pictures are made when they are opened, not before', async () => {
+  const { wrapper } = await openSheet({ capture: tapped(), amplitudes: tenDegrees });
+  expect(foldOf(wrapper, 'The motion').text()).toBe('The motion');
+  expect((await openFold(wrapper, 'The motion')).text()).toContain('through the lowest point at up to');
+  expect((await openFold(wrapper, 'How the amplitude fell')).text()).toContain('In 20 swings the amplitude fell');
+});
+
+it('the decay fold asks for the end reading where there is none, and opens the form for it', async () => {
+  const { wrapper, entry } = await openSheet({ capture: tapped(), amplitudes: tenDegrees.slice(0, 1) });
+  const fold = await openFold(wrapper, 'How the amplitude fell');
+  await fold
+    .findAll('button')
+    .find((button) => button.text() === 'Give the amplitude at the end')!
+    .trigger('click');
+  await flushPromises();
+  const form = wrapper.find('form');
+  expect(form.text()).toContain('At the end, swing 20');
+  expect(document.activeElement!.closest('form')).toBe(form.element);
+  expect(entry().edits).toEqual([]);
+});
+
+it('without an amplitude both folds say what reading would bring them', async () => {
+  const { wrapper } = await openSheet({ capture: tapped() });
+  for (const title of ['The motion', 'How the amplitude fell']) {
+    const fold = await openFold(wrapper, title);
+    expect(fold.text()).toContain('Give the amplitude at the start: how far out the bob swung.');
+    expect(fold.find('figure').exists()).toBe(false);
+  }
 });
