@@ -12,6 +12,9 @@ export interface Settings {
   /** The dot on the pad that says how evenly the taps come. */
   steadinessDot: boolean;
   decimalMark: '.' | ',';
+  /** Where the device is used, for normal gravity; null until somebody says it. To a tenth of a degree. */
+  latitudeDeg: number | null;
+  heightM: number | null;
 }
 
 const DEFAULTS: Settings = {
@@ -22,6 +25,8 @@ const DEFAULTS: Settings = {
   gloveMode: false,
   steadinessDot: true,
   decimalMark: '.',
+  latitudeDeg: null,
+  heightM: null,
 };
 
 /** How this device is set. Kept on the device, for whoever uses it. */
