@@ -6,8 +6,10 @@ import type { RunView } from '../timing/runView';
 import { lineMethod } from './lineMethod';
 import type { Fit, Method } from './method';
 import { LOSS_SETS } from './motion/averageLosses';
-import { fitMotion, losesMuch, type MotionFit } from './motion/fitMotion';
+import { fitMotion } from './motion/fitMotion';
 import { motionData, type MotionData } from './motion/motionData';
+import type { MotionFit } from './motion/motionFit';
+import { losesMuch } from './motion/motionUnknowns';
 import type { MotionEvent } from './motion/predictMotion';
 import { startMotion } from './motion/startMotion';
 import { clockShare, HAND_U } from './timingShares';
@@ -111,6 +113,7 @@ function fitOf(view: RunView, { data, fit, decayKnown, doubt }: Found): Fit {
     lag1: timing.lag1,
     elapsed,
     residuals: fit.residuals,
+    basis: timing.basis,
     missing: decayKnown ? [] : ['end_amplitude'],
     motion: motionOf(fit),
   };
@@ -149,7 +152,7 @@ function timingOf(view: RunView, data: MotionData, fit: MotionFit) {
   const shares: BudgetLine[] = isUsual
     ? [{ term: data.gate ? 'timing' : 'hand', type: 'B', u: hypot(usual, byBlocks), dof: null }]
     : byScatter;
-  return { shares: [...shares, reading], jitter: found?.jitter ?? null, lag1: found?.lag1 ?? null };
+  return { shares: [...shares, reading], jitter: found?.jitter ?? null, lag1: found?.lag1 ?? null, basis };
 }
 
 function blockShare(fit: MotionFit, place: number): number {

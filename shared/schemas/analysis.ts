@@ -14,7 +14,9 @@ export const Flag = z.strictObject({
   /** What was seen, for the message: seconds, counts and ratios by name. */
   seen: z.record(z.string(), z.number()),
   /** Edits that would answer it, best first, as kinds of EditChange plus 'keep_flagged'. */
-  choices: z.array(z.enum(['leave_out_mark', 'insert_gap', 'reread_as_half_swings', 'set_swings', 'keep_flagged'])),
+  choices: z.array(
+    z.enum(['leave_out_mark', 'insert_gap', 'keep_part', 'reread_as_half_swings', 'set_swings', 'keep_flagged']),
+  ),
   /** True once an edit answers it. */
   answered: z.boolean(),
 });

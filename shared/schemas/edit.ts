@@ -23,6 +23,11 @@ export const FLAG_CODES = [
   'clock_gap',
   'cut_short',
   'chatter',
+  'off_centre',
+  'pause',
+  'drift',
+  'round_numbers',
+  'implausible',
 ] as const;
 export type FlagCode = (typeof FLAG_CODES)[number];
 
@@ -32,6 +37,8 @@ export const EditChange = z.discriminatedUnion('kind', [
   z.strictObject({ kind: z.literal('leave_out_mark'), mark: Mark }),
   /** `count` swings-per-mark steps are missing before this mark. Never a time. */
   z.strictObject({ kind: z.literal('insert_gap'), before_mark: Mark, count: z.int().min(1).max(50) }),
+  /** Only the marks from one to another count, both included: the rest was another swing, or timed across a pause. */
+  z.strictObject({ kind: z.literal('keep_part'), from_mark: Mark, to_mark: Mark }),
   z.strictObject({ kind: z.literal('reread_as_half_swings') }),
   /** Sets the number of swings between first and last mark, or of a keyed total. */
   z.strictObject({ kind: z.literal('set_swings'), swings: z.number().min(0.5).max(MAX_SWINGS) }),

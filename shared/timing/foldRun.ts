@@ -38,7 +38,7 @@ export function foldRun(run: RawRun, edits: RawEdit[]): RunView {
 
   const blocks = capture.kind === 'gate' ? gateMarks(capture) : [];
   const times = capture.kind === 'gate' ? blocks.map((block) => block.time) : capture.mark_us.map((us) => us / 1e6);
-  const out = leftOut(changes);
+  const out = leftOut(changes, times.length);
   const pieces = new Set([...out, ...blocks.flatMap(({ partOf }, i) => (partOf === null ? [] : [i]))]);
   const numbered = numberMarks(times, { swingsPerMark, leftOut: pieces, gaps: gaps(run, changes) });
   const withBlocks = numbered.marks.map((mark, i) => {
@@ -82,8 +82,14 @@ function rawSwingsPerMark(run: RawRun): number {
   return run.capture.kind === 'gate' ? 0.5 : run.capture.swings_per_mark;
 }
 
-function leftOut(changes: EditChange[]): Set<number> {
-  return new Set(changes.filter((change) => change.kind === 'leave_out_mark').map((change) => change.mark));
+function leftOut(changes: EditChange[], marks: number): Set<number> {
+  const out = new Set<number>();
+  for (const change of changes) {
+    if (change.kind === 'leave_out_mark') out.add(change.mark);
+    if (change.kind !== 'keep_part') continue;
+    for (let mark = 0; mark < marks; mark += 1) if (mark < change.from_mark || mark > change.to_mark) out.add(mark);
+  }
+  return out;
 }
 
 /** Marks missing before each mark: told on the pad, then added by edits. */

@@ -1,5 +1,6 @@
 import { defineStore } from 'pinia';
 import { reactive, toRefs, watch } from 'vue';
+import type { MethodProfile } from '@shared/analysis/summariseRepeats';
 import { savedSettings, saveSettings } from '@/db/appStore';
 
 export interface Settings {
@@ -15,6 +16,8 @@ export interface Settings {
   /** Where the device is used, for normal gravity; null until somebody says it. To a tenth of a degree. */
   latitudeDeg: number | null;
   heightM: number | null;
+  /** How the mean of repeats is stated. */
+  repeatProfile: MethodProfile;
 }
 
 const DEFAULTS: Settings = {
@@ -27,6 +30,7 @@ const DEFAULTS: Settings = {
   decimalMark: '.',
   latitudeDeg: null,
   heightM: null,
+  repeatProfile: 'gum',
 };
 
 /** How this device is set. Kept on the device, for whoever uses it. */

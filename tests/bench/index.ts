@@ -2,6 +2,7 @@
 const benches: Record<string, () => Promise<unknown>> = {
   coverage: () => import('./coverage'),
   fit: () => import('./fit'),
+  flags: () => import('./flags'),
   tap: () => import('./tap'),
 };
 

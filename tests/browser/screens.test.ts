@@ -153,6 +153,31 @@ describe('every screen', () => {
     ).toEqual([]);
   });
 
+  it('of the Board keeps picture and words apart at every text size, on one projector screen', async () => {
+    const page = await pageOn(PROJECTOR);
+    await page.goto(`${site.url}/board/${demo.classes[0]!.board_pass}`);
+    await page.locator('.dot-plot canvas').waitFor();
+    for (const step of [0, 1, 2, 3, 4, 5]) {
+      if (step > 0) await page.locator('main').press('+');
+      await page.waitForTimeout(300);
+      const seen = await page.evaluate(() => {
+        const box = (name: string) => document.querySelector(name)!.getBoundingClientRect();
+        return {
+          apart: box('.board-foot').top - box('.dot-plot').bottom,
+          picture: box('.dot-plot').height / innerHeight,
+          tooHigh: document.documentElement.scrollHeight - innerHeight,
+        };
+      });
+      expect([step, seen.apart >= 0, seen.picture > 0.3, seen.tooHigh <= 0, seen]).toEqual([
+        step,
+        true,
+        true,
+        true,
+        seen,
+      ]);
+    }
+  });
+
   it('of the Board has no violation', async () => {
     const page = await pageOn(PROJECTOR);
     const found = await look(page, `/board/${demo.classes[0]!.board_pass}`, async () =>

@@ -138,6 +138,7 @@ const mark = fc.integer({ min: 0, max: 45 });
 export const anyChange: fc.Arbitrary<EditChange> = fc.oneof(
   fc.record({ kind: fc.constant('leave_out_mark' as const), mark }),
   fc.record({ kind: fc.constant('insert_gap' as const), before_mark: mark, count: fc.integer({ min: 1, max: 50 }) }),
+  fc.record({ kind: fc.constant('keep_part' as const), from_mark: mark, to_mark: mark }),
   fc.record({ kind: fc.constant('reread_as_half_swings' as const) }),
   fc.record({ kind: fc.constant('set_swings' as const), swings: fc.double({ min: 0.5, max: 1_000, noNaN: true }) }),
   fc.record({ kind: fc.constant('set_rig' as const), rig }),

@@ -5,7 +5,7 @@ import type { Analysis } from '../../schemas/analysis';
 import { hypot } from '../../statistics/hypot';
 import type { RunView } from '../../timing/runView';
 import { blockAmplitudes, FLAG_WIDTH_U } from '../blockAmplitudes';
-import type { MotionFit } from '../motion/fitMotion';
+import type { MotionFit } from '../motion/motionFit';
 import { dampingOf } from '../motion/motionUnknowns';
 import { findMotion } from '../motionMethod';
 import { readAmplitudes } from '../readAmplitudes';

@@ -126,7 +126,7 @@ function paintBars(brush: Brush, placed: { dot: BenchDot; y: number }[], colour:
   context.restore();
 }
 
-/** Words to the right of a mark; to the left of the edge when there is no room. */
+/** Words to the right of a mark and its bar; to the left of both when there is no room. */
 function paintBeside(brush: Brush, label: string, dot: BenchDot, y: number, { type, marker }: LaneSizes): void {
   const { context, theme, px, left, width } = brush;
   const from = Math.max(brush.x(dot.period_s + dot.expanded_u_s), brush.x(dot.period_s) + px(marker));
@@ -134,9 +134,10 @@ function paintBeside(brush: Brush, label: string, dot: BenchDot, y: number, { ty
   context.fillStyle = theme.ink;
   context.font = `${px(type * 0.85)}px ${theme.font}`;
   context.textBaseline = 'middle';
-  context.textAlign = 'left';
-  const room = left + width - context.measureText(label).width;
-  context.fillText(label, Math.min(from + px(marker * 0.8), room), y);
+  const isRight = from + px(marker * 0.8) + context.measureText(label).width <= left + width;
+  const to = Math.min(brush.x(dot.period_s - dot.expanded_u_s), brush.x(dot.period_s) - px(marker));
+  context.textAlign = isRight ? 'left' : 'right';
+  context.fillText(label, isRight ? from + px(marker * 0.8) : to - px(marker * 0.8), y);
   context.restore();
 }
 

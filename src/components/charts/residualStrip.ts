@@ -35,6 +35,11 @@ export const FLAG_SHAPES: Record<FlagCode, Shape> = {
   clock_gap: 'cross',
   cut_short: 'ring',
   chatter: 'cross',
+  pause: 'square',
+  off_centre: 'triangle',
+  drift: 'plus',
+  round_numbers: 'ring',
+  implausible: 'star',
 };
 
 export function stripPoints(analysis: Analysis): StripPoint[] {

@@ -1,10 +1,11 @@
 import 'fake-indexeddb/auto';
 import { flushPromises, type VueWrapper } from '@vue/test-utils';
-import { afterEach, expect, it } from 'vitest';
+import { afterEach, expect, it, vi } from 'vitest';
 import { computed, defineComponent, h } from 'vue';
 import { analyseRun } from '@shared/analysis/analyseRun';
 import { canonicalText, digestOf } from '@shared/schemas/canonical';
 import { RawRun } from '@shared/schemas/run';
+import { readRunFile } from '@shared/schemas/runFile';
 import { gated, keyed, metreRig, tapped, tappedWithDouble, tenDegrees } from '../../factories/captures';
 import { mountApp } from '../support/mountApp';
 import { plugIn } from '../support/network';
@@ -139,6 +140,43 @@ it('the server agrees when every printed digit is the same, and a digest of othe
   expect(agreement(analysis, elsewhere(1e-15))).toBe('agrees');
   expect(agreement(analysis, elsewhere(period_s!.expanded_u))).toBe('differs');
   expect(agreement(analysis, { ...analysis, input_digest: 'f'.repeat(64) })).toBe('otherInputs');
+});
+
+it('a run is set aside with a reason and taken back, and its figures stay', async () => {
+  const { wrapper, press, entry } = await openSheet({ capture: tapped(), amplitudes: tenDegrees });
+  const { small_period_s, input_digest } = entry().analysis;
+  const button = (name: string) => wrapper.findAll('button').find((one) => one.text() === name)!;
+  await button('Set this run aside').trigger('click');
+  await wrapper.get('.set-aside form').trigger('submit');
+  expect(wrapper.get('.set-aside').text()).toContain('Say in a few words');
+  await wrapper.get('.set-aside input').setValue(' bob hit the stand \ud83d');
+  await wrapper.get('.set-aside form').trigger('submit');
+  await eventually(() => expect(wrapper.get('.set-aside--out').text()).toContain('You: bob hit the stand'));
+  expect(entry().setAside?.reason).toBe('bob hit the stand');
+  expect(wrapper.get('.run-history').text()).toContain('Reason: bob hit the stand');
+  expect(entry().analysis).toMatchObject({ small_period_s, input_digest });
+  await press('Let it count again');
+  await eventually(() => expect(entry().setAside).toBeNull());
+});
+
+it('saved as a file, a run with its edits reads back as it is here, for the command line too', async () => {
+  const { wrapper, press, entry } = await openSheet({ capture: tappedWithDouble(), amplitudes: tenDegrees });
+  await press('Leave out mark 9');
+  const files: Blob[] = [];
+  vi.spyOn(URL, 'createObjectURL').mockImplementation((file) => `blob:${files.push(file as Blob)}`);
+  const names: string[] = [];
+  vi.spyOn(HTMLAnchorElement.prototype, 'click').mockImplementation(function (this: HTMLAnchorElement) {
+    names.push(this.download);
+  });
+  await wrapper
+    .findAll('button')
+    .find((button) => button.text() === 'Save this run as a file')!
+    .trigger('click');
+  await eventually(() => expect(files).toHaveLength(1));
+  const [read] = readRunFile(await files[0]!.text());
+  expect(names[0]).toMatch(/^swaymark-run-\d{4}-\d\d-\d\d\.json$/);
+  expect(analyseRun(read!)).toEqual(entry().analysis);
+  vi.restoreAllMocks();
 });
 
 it('folds of pictures are made when they are opened, not before', async () => {
