@@ -13,6 +13,9 @@ export interface Settings {
   /** The dot on the pad that says how evenly the taps come. */
   steadinessDot: boolean;
   decimalMark: '.' | ',';
+  /** Where the device is used, for normal gravity; null until somebody says it. To a tenth of a degree. */
+  latitudeDeg: number | null;
+  heightM: number | null;
   /** How the mean of repeats is stated. */
   repeatProfile: MethodProfile;
 }
@@ -25,6 +28,8 @@ const DEFAULTS: Settings = {
   gloveMode: false,
   steadinessDot: true,
   decimalMark: '.',
+  latitudeDeg: null,
+  heightM: null,
   repeatProfile: 'gum',
 };
 

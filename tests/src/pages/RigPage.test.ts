@@ -77,7 +77,7 @@ it('a sideways distance longer than the string holds up the pad, stays as typed 
   await eventually(() => expect(document.activeElement).toBe(field('At the start').element));
   expect(field('At the start').element.value).toBe('120');
   expect(wrapper.text()).toContain('The sideways distance is not shorter than the length it hangs at.');
-  expect(wrapper.text()).toContain('1 field cannot be read yet');
+  expect(wrapper.text()).toContain('1 field needs another look');
   expect(router.currentRoute.value.name).toBe('rig');
   expect((await inForce()).amplitudes).toEqual([]);
 });
