@@ -63,6 +63,7 @@ export default defineConfig(({ mode }) => {
             demo: at('./server/cli/demo.ts'),
             backup: at('./server/cli/backup.ts'),
             restore: at('./server/cli/restore.ts'),
+            'reset-link': at('./server/cli/resetLink.ts'),
           },
         },
       },

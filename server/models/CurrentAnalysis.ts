@@ -12,8 +12,10 @@ export class CurrentAnalysis extends Model<InferAttributes<CurrentAnalysis>, Inf
   declare bench: number | null;
   declare small_period_s: number | null;
   declare small_period_u_s: number | null;
+  declare small_period_expanded_u_s: number | null;
   declare length_m: number | null;
   declare open_flags: number;
+  declare set_aside: boolean;
 }
 
 export const defineCurrentAnalysis = (sequelize: Sequelize) =>
@@ -27,8 +29,10 @@ export const defineCurrentAnalysis = (sequelize: Sequelize) =>
       bench: DataTypes.INTEGER,
       small_period_s: DataTypes.REAL,
       small_period_u_s: DataTypes.REAL,
+      small_period_expanded_u_s: DataTypes.REAL,
       length_m: DataTypes.REAL,
       open_flags: DataTypes.INTEGER,
+      set_aside: DataTypes.BOOLEAN,
     },
     { sequelize, tableName: 'current_analyses' },
   );

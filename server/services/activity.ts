@@ -4,7 +4,7 @@ import { isSignedIn, type Actor } from '../policies/actor';
 
 /** Writes down, in the caller's transaction, that this actor did or tried this to that subject. */
 export async function noteActivity(
-  { database, now }: Deps,
+  { database, now }: Pick<Deps, 'database' | 'now'>,
   actor: Actor,
   action: string,
   subject: string,

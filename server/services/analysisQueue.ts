@@ -4,6 +4,7 @@ import { analyseRun, METHOD, type Sealed } from '@shared/analysis/analyseRun';
 import type { Analysis } from '@shared/schemas/analysis';
 import type { RawEdit } from '@shared/schemas/edit';
 import type { RawRun } from '@shared/schemas/run';
+import { inForce, setAside } from '@shared/timing/foldRun';
 import type { Database } from '../models/openDatabase';
 import { selectWhereIn } from '../models/selectWhereIn';
 import { storeAnalyses, type Computed } from './storeAnalyses';
@@ -55,8 +56,10 @@ export function createAnalysisQueue(database: Database, log: Logger, now: () => 
     for (const run of await loadInputs(database, runIds)) {
       const start = performance.now();
       try {
-        const analysis = analyseRun({ run: unsealed<RawRun>(run), edits: run.edits.map(unsealed<RawEdit>) });
-        done.push({ run, edit_seq: run.edits.at(-1)?.seq ?? 0, analysis });
+        const edits = run.edits.map(unsealed<RawEdit>);
+        const analysis = analyseRun({ run: unsealed<RawRun>(run), edits });
+        const isSetAside = setAside(inForce(edits.map(({ content }) => content))) !== null;
+        done.push({ run, edit_seq: run.edits.at(-1)?.seq ?? 0, isSetAside, analysis });
       } catch (error) {
         log.error({ err: error, run: run.id }, 'a run could not be analysed');
       }

@@ -9,8 +9,10 @@ type PointRow = {
   bench: number;
   small_period_s: number | null;
   small_period_u_s: number | null;
+  small_period_expanded_u_s: number | null;
   length_m: number | null;
   open_flags: number;
+  set_aside: 0 | 1;
 };
 
 /** A class's dots that are new or have changed since the cursor: benches and figures, nothing anybody wrote. */
@@ -22,7 +24,8 @@ export async function boardAfter(
   // A cursor beyond the end is from another life of the database: start over.
   const from = after > (await topOfFeed(database)) ? 0 : after;
   const rows = await database.select<PointRow>(
-    `SELECT run_id, feed_seq, bench, small_period_s, small_period_u_s, length_m, open_flags FROM current_analyses
+    `SELECT run_id, feed_seq, bench, small_period_s, small_period_u_s, small_period_expanded_u_s, length_m, open_flags,
+       set_aside FROM current_analyses
      WHERE class_id = $1 AND feed_seq > $2 AND bench IS NOT NULL ORDER BY feed_seq`,
     [schoolClass.id, from],
   );
@@ -35,10 +38,16 @@ export async function boardAfter(
   };
 }
 
-const presentPoint = (row: PointRow): BoardPoint => ({
-  run_id: row.run_id,
-  bench: row.bench,
-  small_period_s: row.small_period_s === null ? null : { value: row.small_period_s, u: row.small_period_u_s ?? 0 },
-  length_m: row.length_m,
-  open_flags: row.open_flags,
-});
+/** A board of an earlier version shows no run without a figure: that takes one set aside off it as well. */
+const presentPoint = (row: PointRow): BoardPoint =>
+  row.set_aside
+    ? { ...placeOf(row), small_period_s: null, length_m: null, open_flags: 0, set_aside: true }
+    : { ...placeOf(row), small_period_s: periodOf(row), length_m: row.length_m, open_flags: row.open_flags };
+
+const placeOf = ({ run_id, bench }: PointRow) => ({ run_id, bench });
+
+function periodOf(row: PointRow): BoardPoint['small_period_s'] {
+  if (row.small_period_s === null) return null;
+  const { small_period_s: value, small_period_u_s: u, small_period_expanded_u_s: expanded_u } = row;
+  return { value, u: u ?? 0, expanded_u: expanded_u ?? 2 * (u ?? 0) };
+}

@@ -83,7 +83,11 @@ export async function sendResetLink(deps: Deps, email: string): Promise<void> {
 }
 
 /** One more link to choose a new password. Those before stay good until one is used: mails may come late and in any order. */
-export async function createResetLink(deps: Deps, account_id: string, transaction: Transaction): Promise<string> {
+export async function createResetLink(
+  deps: Pick<Deps, 'database' | 'now' | 'publicUrl'>,
+  account_id: string,
+  transaction: Transaction,
+): Promise<string> {
   const { token } = await createToken(deps, { purpose: 'reset', account_id }, transaction);
   return `${deps.publicUrl}/reset/${token}`;
 }

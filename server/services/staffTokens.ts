@@ -18,7 +18,7 @@ const LIFE_MS = { set_up: 7 * DAY_MS, invite: 7 * DAY_MS, reset: 30 * MINUTE_MS 
 type Bound = Pick<StaffToken, 'purpose'> & Partial<Pick<StaffToken, 'email' | 'role' | 'account_id' | 'invited_by'>>;
 
 export async function createToken(
-  { database, now }: Deps,
+  { database, now }: Pick<Deps, 'database' | 'now'>,
   bound: Bound,
   transaction: Transaction,
 ): Promise<{ token: string; row: StaffToken }> {

@@ -9,12 +9,14 @@ export interface Computed {
   run: Inputs;
   /** The last edit taken into account; 0 for none. */
   edit_seq: number;
+  isSetAside: boolean;
   analysis: Analysis;
 }
 
 /**
  * Keeps analyses and puts them in force. One of the same inputs is kept once; coming back to earlier
- * inputs puts the earlier row in force again and says so in the feed.
+ * inputs, or setting the run aside or taking it back, puts the earlier row in force again and says so in
+ * the feed, which is what boards follow.
  */
 export async function storeAnalyses(database: Database, computed: readonly Computed[], atMs: number): Promise<void> {
   if (computed.length === 0) return;
@@ -26,19 +28,19 @@ export async function storeAnalyses(database: Database, computed: readonly Compu
 
 async function storeOne(
   database: Database,
-  { run, edit_seq, analysis }: Computed,
+  { run, edit_seq, isSetAside, analysis }: Computed,
   nextSeq: () => number,
   atMs: number,
   transaction: Transaction,
 ): Promise<void> {
-  const [held] = await database.select<{ seq: number; bytes: number; current: number | null }>(
-    `SELECT a.seq, length(a.body) AS bytes, c.analysis_seq AS current FROM analyses a
+  const [held] = await database.select<{ seq: number; bytes: number; current: number | null; set_aside: 0 | 1 | null }>(
+    `SELECT a.seq, length(a.body) AS bytes, c.analysis_seq AS current, c.set_aside FROM analyses a
        LEFT JOIN current_analyses c ON c.run_id = a.run_id
      WHERE a.run_id = $1 AND a.input_digest = $2`,
     [run.id, analysis.input_digest],
     transaction,
   );
-  if (held && held.current === held.seq) {
+  if (held && held.current === held.seq && Boolean(held.set_aside) === isSetAside) {
     await database.run('UPDATE current_analyses SET edit_seq = $1 WHERE run_id = $2', [edit_seq, run.id], transaction);
     return;
   }
@@ -64,8 +66,10 @@ async function storeOne(
     bench,
     small_period_s: analysis.small_period_s?.value ?? null,
     small_period_u_s: analysis.small_period_s?.u ?? null,
+    small_period_expanded_u_s: analysis.small_period_s?.expanded_u ?? null,
     length_m: analysis.length_m?.value ?? null,
     open_flags: analysis.flags.filter(({ answered }) => !answered).length,
+    set_aside: isSetAside ? 1 : 0,
   };
   await insertRows(database, 'current_analyses', [current], transaction);
 }

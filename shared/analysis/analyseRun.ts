@@ -1,12 +1,13 @@
-import type { Analysis, BudgetLine, MarkRow } from '../schemas/analysis';
+import type { Analysis, MarkRow } from '../schemas/analysis';
 import { canonicalText, digestOf } from '../schemas/canonical';
 import type { RawEdit } from '../schemas/edit';
 import type { RawRun } from '../schemas/run';
-import { gravityFrom } from '../physics/gravity';
 import { reducedLength } from '../physics/reducedLength';
+import { missingReadings } from '../physics/rigBody';
 import { foldRun, inForce } from '../timing/foldRun';
 import type { RunView } from '../timing/runView';
 import { degrees } from '../units/angle';
+import { correctedGravity } from './correctedGravity';
 import { findFlags } from './findFlags';
 import type { Estimate, Fit } from './method';
 import { motionMethod } from './motionMethod';
@@ -42,8 +43,8 @@ export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<
   const fit = METHOD.fit(view);
   const period = stated(fit.period);
   const smallPeriod = stated(fit.smallPeriod);
-  const length = view.rig ? (reducedLength(view.rig) ?? null) : null;
-  const gravity = smallPeriod && length ? gravityOf(fit.smallPeriod!, length) : null;
+  const length = view.rig && reducedLength(view.rig);
+  const gravity = smallPeriod && view.rig ? correctedGravity(fit.smallPeriod!, view.rig) : undefined;
   return {
     run_id: run.content.id,
     input_digest: inputDigest(run, edits),
@@ -56,22 +57,27 @@ export function analyseRun({ run, edits }: { run: Sealed<RawRun>; edits: Sealed<
     jitter_s: fit.jitter,
     lag1: fit.lag1,
     motion: motionOf(fit),
-    length_m: length,
-    g_m_s2: gravity && stateResult(gravity.value, gravity.shares),
+    length_m: length ? { value: length.value, u: length.u } : null,
+    g_m_s2: gravity ? stateResult(gravity.value, gravity.shares) : null,
+    corrections: gravity?.corrections ?? [],
     budget: (smallPeriod && fit.smallPeriod?.shares) ?? (period && fit.period?.shares) ?? [],
     g_budget: gravity?.shares ?? [],
     flags: findFlags(run.content, changes, { view, fit }, METHOD),
     marks: markRows(view, fit),
-    missing: [...fit.missing, ...(length === null ? (['length'] as const) : [])],
+    missing: [...fit.missing, ...(view.rig ? missingReadings(view.rig) : (['length'] as const))],
   };
 }
 
 /**
- * Over what the analysis was computed from and nothing else: a note, or an edit that was made and
- * withdrawn again, changes no figure, so it makes no other analysis.
+ * Over what the analysis was computed from and nothing else: a note, setting the run aside, or an edit
+ * that was made and withdrawn again changes no figure, so it makes no other analysis.
  */
 function inputDigest(run: Sealed<RawRun>, edits: Sealed<RawEdit>[]): string {
-  const counting = new Set(inForce(edits.map(({ content }) => content)).filter(({ change }) => change.kind !== 'note'));
+  const counting = new Set(
+    inForce(edits.map(({ content }) => content)).filter(
+      ({ change: { kind } }) => kind !== 'note' && kind !== 'set_aside',
+    ),
+  );
   const digests = edits.filter(({ content }) => counting.has(content)).map(({ digest }) => digest);
   return digestOf(canonicalText({ run: run.digest, edits: digests, method: METHOD.id }));
 }
@@ -112,15 +118,6 @@ function motionOf({ motion }: Fit): Analysis['motion'] {
     law: alone ? law : acting.length > 1 ? 'mixed' : 'not_known',
     gate_angle_deg: gateAngle && inDegrees(gateAngle),
   };
-}
-
-/** g = 4π²L/T0²: every share of T0 counts 2g/T0, the length g/L. */
-function gravityOf(smallPeriod: Estimate, length: { value: number; u: number }): Estimate {
-  const value = gravityFrom(smallPeriod.value, length.value);
-  const perSecond = (2 * value) / smallPeriod.value;
-  const fromPeriod = smallPeriod.shares.map((share) => ({ ...share, u: share.u * perSecond }));
-  const fromLength: BudgetLine = { term: 'length', type: 'B', u: (length.u * value) / length.value, dof: null };
-  return { value, shares: [...fromPeriod, fromLength] };
 }
 
 function markRows(view: RunView, fit: Fit): MarkRow[] {

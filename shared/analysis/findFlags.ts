@@ -5,10 +5,11 @@ import { checkMarks } from '../timing/checkMarks';
 import { foldRun, inForce } from '../timing/foldRun';
 import type { RunView } from '../timing/runView';
 import type { Fit, Method } from './method';
+import { readAmplitudes } from './readAmplitudes';
 import { stateResult } from './stateResult';
 
 /** Edits that take away what a flag was about, rather than saying it was looked at. */
-const CURES: EditKind[] = ['leave_out_mark', 'insert_gap', 'reread_as_half_swings', 'set_swings'];
+const CURES: EditKind[] = ['leave_out_mark', 'insert_gap', 'reread_as_half_swings', 'set_swings', 'keep_part'];
 
 /**
  * All flags of a run: those of the run as it is now, and those of before the cures, which are answered
@@ -33,11 +34,15 @@ export function findFlags(
   return [...now, ...before.filter((flag) => !isNow(flag)).map((flag) => ({ ...flag, answered: true }))];
 }
 
-function flagsOf(view: RunView, { elapsed, residuals, period, smallPeriod }: Fit): Flag[] {
+function flagsOf(view: RunView, { elapsed, residuals, basis, period, smallPeriod, motion }: Fit): Flag[] {
   return checkMarks(view, {
     elapsed,
     residuals,
+    basis,
     period: period && stateResult(period.value, period.shares),
     smallPeriod: smallPeriod && stateResult(smallPeriod.value, smallPeriod.shares),
+    readings: readAmplitudes(view.amplitudes),
+    followsMotion: motion !== null,
+    gateAngle: motion?.gateAngle ?? null,
   });
 }

@@ -54,6 +54,7 @@ export const lineMethod: Method = {
       lag1: scatter.lag1,
       elapsed,
       residuals: corrected.residuals,
+      basis: corrected.basis,
       missing: amplitudes.decayKnown ? [] : ['end_amplitude'],
       motion: null,
     };
@@ -68,6 +69,7 @@ const NOTHING: Fit = {
   lag1: null,
   elapsed: [],
   residuals: [],
+  basis: [],
   missing: [],
   motion: null,
 };
@@ -108,6 +110,7 @@ function periodOnly(view: RunView, plain: LineFit): Partial<Fit> {
     jitter: scatter.jitter,
     lag1: scatter.lag1,
     residuals: plain.residuals,
+    basis: plain.basis,
   };
 }
 

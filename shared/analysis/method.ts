@@ -30,6 +30,8 @@ export interface Fit {
   elapsed: number[];
   /** For each mark in force, observed minus calculated, s; empty when nothing was fitted. */
   residuals: number[];
+  /** How marks pull the fit along, one row of all marks a column: `Scattered` in slopeUncertainty. */
+  basis: number[][];
   missing: (typeof MISSING)[number][];
   /** The motion behind it; null when none was fitted. */
   motion: FittedMotion | null;

@@ -6,8 +6,10 @@ import type { RunView } from '../timing/runView';
 import { lineMethod } from './lineMethod';
 import type { Fit, Method } from './method';
 import { LOSS_SETS } from './motion/averageLosses';
-import { fitMotion, losesMuch, type MotionFit } from './motion/fitMotion';
+import { fitMotion } from './motion/fitMotion';
 import { motionData, type MotionData } from './motion/motionData';
+import type { MotionFit } from './motion/motionFit';
+import { losesMuch } from './motion/motionUnknowns';
 import type { MotionEvent } from './motion/predictMotion';
 import { startMotion } from './motion/startMotion';
 import { clockShare, HAND_U } from './timingShares';
@@ -15,12 +17,12 @@ import { exp } from '../physics/elementary';
 import { hypot } from '../statistics/hypot';
 
 /**
- * Method 'motion-1'. The pendulum's equation of motion, at full amplitude and with three terms of
+ * Method 'motion-2'. The pendulum's equation of motion, at full amplitude and with three terms of
  * damping, is fitted to marks, amplitude readings and block times; T0 is one of its unknowns. Where the
  * run does not hold enough for a motion it says what 'line-1' says.
  */
 export const motionMethod: Method = {
-  id: 'motion-1',
+  id: 'motion-2',
   fit(view) {
     const found = findMotion(view);
     return found ? fitOf(view, found) : lineMethod.fit(view);
@@ -111,6 +113,7 @@ function fitOf(view: RunView, { data, fit, decayKnown, doubt }: Found): Fit {
     lag1: timing.lag1,
     elapsed,
     residuals: fit.residuals,
+    basis: timing.basis,
     missing: decayKnown ? [] : ['end_amplitude'],
     motion: motionOf(fit),
   };
@@ -149,7 +152,7 @@ function timingOf(view: RunView, data: MotionData, fit: MotionFit) {
   const shares: BudgetLine[] = isUsual
     ? [{ term: data.gate ? 'timing' : 'hand', type: 'B', u: hypot(usual, byBlocks), dof: null }]
     : byScatter;
-  return { shares: [...shares, reading], jitter: found?.jitter ?? null, lag1: found?.lag1 ?? null };
+  return { shares: [...shares, reading], jitter: found?.jitter ?? null, lag1: found?.lag1 ?? null, basis };
 }
 
 function blockShare(fit: MotionFit, place: number): number {

@@ -1,5 +1,5 @@
-import type { BudgetLine, Result } from '../schemas/analysis';
-import { combinedUncertainty, effectiveDof } from '../statistics/effectiveDof';
+import type { Result } from '../schemas/analysis';
+import { combinedUncertainty, effectiveDof, type Share } from '../statistics/effectiveDof';
 import { studentQuantile } from '../statistics/studentQuantile';
 
 /** Share of cases in which a stated interval is to hold the truth. */
@@ -12,7 +12,7 @@ const COVERAGE = 0.95;
  * @returns null when a number is not finite, so that nothing that cannot be stated is stated
  * @see JCGM 100:2008, G.4
  */
-export function stateResult(value: number, shares: BudgetLine[]): Result | null {
+export function stateResult(value: number, shares: readonly Share[]): Result | null {
   const u = combinedUncertainty(shares);
   const dof = effectiveDof(shares);
   const coverage_factor = studentQuantile(COVERAGE, dof ?? Infinity);

@@ -1,11 +1,11 @@
 import { quantile } from '../statistics/quantile';
 
-/** One run of a bench, with its standard uncertainty. */
+/** One run of a bench, with its uncertainty as the run states it: ± covers 95 times in 100. */
 export interface BenchDot {
   id: string;
   bench: number;
   period_s: number;
-  u_s: number;
+  expanded_u_s: number;
   length_m: number | null;
   open_flags: number;
 }
@@ -34,7 +34,7 @@ export interface BenchSummary {
 /**
  * What the runs of a class say together: each bench has one vote, the median of its runs.
  *
- * @param dots  runs in any order; period and u in s
+ * @param dots  runs in any order; period and U in s
  * @returns     undefined while there is no run
  */
 export function summariseBenches(dots: BenchDot[]): BenchSummary | undefined {
@@ -73,14 +73,14 @@ function rangeOf(dots: BenchDot[], median_s: number): readonly [number, number] 
   const usual = Math.max(
     quantile(away, 0.5),
     quantile(
-      dots.map((dot) => 2 * dot.u_s),
+      dots.map((dot) => dot.expanded_u_s),
       0.5,
     ),
     0.001 * median_s,
   );
   const near = dots.filter((dot) => Math.abs(dot.period_s - median_s) <= FAR * usual);
-  const from = Math.min(...near.map((dot) => dot.period_s - Math.min(2 * dot.u_s, FAR * usual)));
-  const to = Math.max(...near.map((dot) => dot.period_s + Math.min(2 * dot.u_s, FAR * usual)));
+  const from = Math.min(...near.map((dot) => dot.period_s - Math.min(dot.expanded_u_s, FAR * usual)));
+  const to = Math.max(...near.map((dot) => dot.period_s + Math.min(dot.expanded_u_s, FAR * usual)));
   const room = 0.06 * (to - from) || 0.001;
   return [from - room, to + room];
 }

@@ -38,8 +38,8 @@ export function summariseRepeats(values: readonly number[], profile: MethodProfi
     return { value: mean, u: standardError, dof: n - 1, coverage_factor: 2, expanded_u: 2 * standardError };
   }
   const stated = stateResult(mean, [
-    { term: 'timing', type: 'A', u: standardError, dof: n - 1 },
-    { term: 'length', type: 'B', u: shared, dof: null },
+    { u: standardError, dof: n - 1 },
+    { u: shared, dof: null },
   ]);
   // No scatter and nothing shared: an infinite factor of nothing, stated as 0.
   return stated ?? { value: mean, u: 0, dof: null, coverage_factor: studentQuantile(0.95, Infinity), expanded_u: 0 };

@@ -15,7 +15,7 @@ export const HAND_U = 0.07;
  * a median of 78 was seen over 20 000 hosts on a network.
  * @see D. L. Mills, Computer Network Time Synchronization (the hosts); common practice (the limit)
  */
-const CLOCK_RATE_U = 50e-6 / Math.sqrt(3);
+export const CLOCK_RATE_U = 50e-6 / Math.sqrt(3);
 /** With fewer points than this left over, a run does not know its own jitter. */
 const FEWEST_SPARE = 3;
 

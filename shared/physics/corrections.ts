@@ -15,13 +15,6 @@ export const AIR_DENSITY = 1.2;
 /** Kinematic viscosity of air at 20 °C, m²/s. */
 export const AIR_VISCOSITY = 1.51e-5;
 
-/** A ball turns as it swings: I = mL² + (2/5) m r². Positive. @example finiteBob(0.015, 1) // 4.5e-5 */
-export function finiteBob(radius: number, length: number): number {
-  mustNotBeNegative('finiteBob', { radius });
-  mustBeAboveZero('finiteBob', { length });
-  return Math.sqrt(1 + 0.4 * (radius / length) ** 2) - 1;
-}
-
 /** The string's own mass lies higher than the bob: it adds mL²/3 and mL/2. Negative. */
 export function stringMass(stringMass_: number, bobMass: number): number {
   mustNotBeNegative('stringMass', { stringMass: stringMass_ });
@@ -107,48 +100,4 @@ export function quadraticDamping(
   mustNotBeNegative('quadraticDamping', { airDensity, dragCoefficient });
   const mass = (4 / 3) * Math.PI * radius * radius * radius * bobDensity;
   return (airDensity * dragCoefficient * Math.PI * radius ** 2 * length) / (2 * mass);
-}
-
-export interface CorrectionLine {
-  term: 'finite_bob' | 'string_mass' | 'buoyancy' | 'added_mass' | 'yielding_support';
-  /** Relative change of T0 it makes. */
-  period: number;
-  /** Relative error of g = 4π²L/T0² if it is left out: negative where g comes out low. */
-  gravity: number;
-}
-
-/** A ball on a string, as far as it is known. SI; leave out what is not known. */
-export interface StringAndBall {
-  length: number;
-  radius: number;
-  bobDensity: number;
-  stringMass?: number;
-  supportStiffness?: number;
-  gravity: number;
-}
-
-/**
- * Every small correction that can be told, signed and sized, largest first.
- *
- * @example smallCorrections({ length: 1, radius: 0.015, bobDensity: 7850, gravity: 9.80665 })[0]!.term // 'buoyancy'
- */
-export function smallCorrections(pendulum: StringAndBall): CorrectionLine[] {
-  const { length, radius, bobDensity, gravity } = pendulum;
-  mustBeAboveZero('smallCorrections', { length, radius, bobDensity, gravity });
-  const mass = (4 / 3) * Math.PI * radius * radius * radius * bobDensity;
-  const smallPeriod = 2 * Math.PI * Math.sqrt(length / gravity);
-  const lines: CorrectionLine[] = [
-    line('finite_bob', finiteBob(radius, length)),
-    line('buoyancy', buoyancy(bobDensity)),
-    line('added_mass', addedMass({ radius, bobDensity, smallPeriod })),
-  ];
-  if (pendulum.stringMass !== undefined) lines.push(line('string_mass', stringMass(pendulum.stringMass, mass)));
-  if (pendulum.supportStiffness !== undefined) {
-    lines.push(line('yielding_support', yieldingSupport(mass, pendulum.supportStiffness, length, gravity)));
-  }
-  return lines.sort((a, b) => Math.abs(b.period) - Math.abs(a.period));
-}
-
-function line(term: CorrectionLine['term'], period: number): CorrectionLine {
-  return { term, period, gravity: 1 / (1 + period) ** 2 - 1 };
 }

@@ -1,38 +1,35 @@
 import type { Measured } from '../schemas/common';
 import type { Rig } from '../schemas/rig';
-import { GRAVITY_U_ANYWHERE, smallPeriodFrom, STANDARD_GRAVITY } from './gravity';
-import { pivotToCentre } from './rigLength';
 import { hypot } from '../statistics/hypot';
+import { propagate } from '../statistics/propagate';
+import { GRAVITY_U_ANYWHERE, smallPeriodFrom, STANDARD_GRAVITY } from './gravity';
+import { equivalentLength } from './inertia';
+import { LENGTHS, MASSES, missingReadings, rigInertia, rigQuantities, type RigQuantity } from './rigBody';
 
-const M_PER_UM = 1e-6;
+export interface ReducedLength extends Measured {
+  /** What readings of lengths, of masses and the hub bring to `u`, m. */
+  by: { length: number; mass: number; hub: number };
+}
 
 /**
- * Length of the simple pendulum that swings with the same small-amplitude period: (kc² + d²)/d, with
- * kc the radius of gyration about the centre of mass and d its distance from the pivot.
+ * Length of the simple pendulum that swings with the same small-amplitude period: moment of inertia about the
+ * pivot over static moment. Every kind of rig; the string's mass and the air are corrections of their own.
  *
- * - string and bob: kc² = (2/5) r² of a solid sphere when the diameter is known, else 0
- * - bar: kc² = length²/12, d from its middle; disc: D²/8; ring: D²/4, both on the rim unless an offset is given
- * - bar with bob, other: their masses are not known here
+ * A disc hangs from its rim and a ring from its inner edge unless an offset is given; a ring without an inner
+ * diameter is thin. Readings are taken as independent.
  *
  * @param rig  as entered
- * @returns    m, with its standard uncertainty; undefined when the rig does not say enough
+ * @returns    m, with its standard uncertainty; undefined when the rig does not say enough (`missingReadings`)
  * @example reducedLength({ kind: 'bar', bar_length_um: 1_000_000, pivot_offset_um: 500_000, … }) // 0.6667 m
  */
-export function reducedLength(rig: Rig): Measured | undefined {
-  const u = rig.length_u_um * M_PER_UM;
-  if (rig.kind === 'string_bob') return stringAndBob(rig);
-  if (rig.bar_length_um === null) return undefined;
-  const size = rig.bar_length_um * M_PER_UM;
-  const rim = rig.kind === 'bar' ? undefined : size / 2;
-  const offset = rig.pivot_offset_um === null ? rim : rig.pivot_offset_um * M_PER_UM;
-  const shape = { bar: 1 / 12, disc: 1 / 8, ring: 1 / 4, string_bob: 0, bar_bob: 0, other: 0 }[rig.kind];
-  if (shape === 0 || offset === undefined || offset === 0) return undefined;
-  const value = (shape * size ** 2) / offset + offset;
-  const perSize = (2 * shape * size) / offset;
-  const perOffset = 1 - (shape * size ** 2) / offset ** 2;
-  // On the rim the offset is half the diameter and not a reading of its own.
-  const onRim = rig.pivot_offset_um === null;
-  return { value, u: onRim ? u * Math.abs(perSize + perOffset / 2) : u * hypot(perSize, perOffset) };
+export function reducedLength(rig: Rig): ReducedLength | undefined {
+  if (missingReadings(rig).length > 0) return undefined;
+  const quantities = rigQuantities(rig) as Record<RigQuantity, Measured>;
+  const { value, shares } = propagate(quantities, (values) => equivalentLength(rigInertia(rig, values)) ?? NaN);
+  if (!Number.isFinite(value)) return undefined;
+  const share = (...names: readonly RigQuantity[]) => hypot(...names.map((name) => shares[name] ?? 0));
+  const by = { length: share(...LENGTHS), mass: share(...MASSES), hub: share('hub') };
+  return { value, u: hypot(by.length, by.mass, by.hub), by };
 }
 
 /**
@@ -45,15 +42,7 @@ export function reducedLength(rig: Rig): Measured | undefined {
  */
 export function expectedPeriod(rig: Rig): Measured | undefined {
   const length = reducedLength(rig);
-  if (length === undefined || !(length.value > 0)) return undefined;
+  if (length === undefined) return undefined;
   const value = smallPeriodFrom(length.value, STANDARD_GRAVITY);
   return { value, u: (value / 2) * hypot(length.u / length.value, GRAVITY_U_ANYWHERE / STANDARD_GRAVITY) };
-}
-
-function stringAndBob(rig: Rig): Measured | undefined {
-  const length = pivotToCentre(rig);
-  if (length === undefined || !(length.value > 0)) return undefined;
-  const radius = ((rig.bob_diameter_um ?? 0) * M_PER_UM) / 2;
-  const finiteBob = (0.4 * radius ** 2) / length.value;
-  return { value: length.value + finiteBob, u: length.u };
 }

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { Bench, Line, Uuid, WallMs } from './common';
 import { hasInvisibleSigns } from './invisibleSigns';
 import { MAX_BENCH } from './limits';
+import { withoutSpacing } from './tidyTyped';
 
 /** People, classes and signing in. */
 
@@ -14,7 +15,7 @@ export type StaffRole = z.infer<typeof StaffRole>;
 export const CLASS_CODE_ALPHABET = '2346789BCDFGHJKMPQRTVWXY';
 export const ClassCode = z
   .string()
-  .transform((typed) => typed.toUpperCase().replace(/[\s-]/g, ''))
+  .transform((typed) => withoutSpacing(typed).toUpperCase())
   .pipe(
     z
       .string()
@@ -24,6 +25,8 @@ export const Nickname = Line.min(1, 'a nickname or roster number is needed')
   .max(24)
   .refine((typed) => !hasInvisibleSigns(typed), 'there is a sign in it that cannot be seen: type it anew');
 export const Pin = z.string().regex(/^\d{6}$/, 'a PIN has six digits');
+/** A PIN as a person types it. */
+const TypedPin = z.string().transform(withoutSpacing).pipe(Pin);
 export const Email = z
   .string()
   .trim()
@@ -57,7 +60,7 @@ export type ClassCard = z.infer<typeof ClassCard>;
 export const JoinRequest = z.strictObject({ join_id: Uuid, code: ClassCode, bench: Bench, nickname: Nickname });
 /** The PIN is shown once, here. */
 export const JoinAnswer = z.strictObject({ me: Me, pin: Pin });
-export const ReturnRequest = z.strictObject({ code: ClassCode, bench: Bench, nickname: Nickname, pin: Pin });
+export const ReturnRequest = z.strictObject({ code: ClassCode, bench: Bench, nickname: Nickname, pin: TypedPin });
 export const MeAnswer = z.strictObject({ me: Me.nullable() });
 export const SignInRequest = z.strictObject({
   email: Email,
@@ -110,9 +113,12 @@ export const ClassAnswer = z.strictObject({ class: ClassView });
 export const BoardPoint = z.strictObject({
   run_id: Uuid,
   bench: z.int().min(1).max(MAX_BENCH),
-  small_period_s: z.strictObject({ value: z.number(), u: z.number() }).nullable(),
+  /** `expanded_u` is what the Desk states: coverage factor times u. */
+  small_period_s: z.strictObject({ value: z.number(), u: z.number(), expanded_u: z.number() }).nullable(),
   length_m: z.number().nullable(),
   open_flags: z.int().min(0),
+  /** Set aside: it is to be taken off the Board. Such a point comes without its figures. */
+  set_aside: z.literal(true).optional(),
 });
 export type BoardPoint = z.infer<typeof BoardPoint>;
 export const BoardAnswer = z.strictObject({

@@ -14,7 +14,9 @@ export const Flag = z.strictObject({
   /** What was seen, for the message: seconds, counts and ratios by name. */
   seen: z.record(z.string(), z.number()),
   /** Edits that would answer it, best first, as kinds of EditChange plus 'keep_flagged'. */
-  choices: z.array(z.enum(['leave_out_mark', 'insert_gap', 'reread_as_half_swings', 'set_swings', 'keep_flagged'])),
+  choices: z.array(
+    z.enum(['leave_out_mark', 'insert_gap', 'keep_part', 'reread_as_half_swings', 'set_swings', 'keep_flagged']),
+  ),
   /** True once an edit answers it. */
   answered: z.boolean(),
 });
@@ -35,7 +37,10 @@ export const MarkRow = z.strictObject({
 export type MarkRow = z.infer<typeof MarkRow>;
 
 export const BudgetLine = z.strictObject({
-  term: z.enum(['timing', 'reading', 'hand', 'clock', 'amplitude', 'decay', 'length']),
+  term: z.enum([
+    ...(['timing', 'reading', 'hand', 'clock', 'amplitude', 'decay'] as const),
+    ...(['length', 'mass', 'hub', 'air', 'string', 'support'] as const),
+  ]),
   type: z.enum(['A', 'B']),
   /** Standard uncertainty it brings to the result, s for T0, m/s² for g. */
   u: z.number().min(0),
@@ -43,6 +48,16 @@ export const BudgetLine = z.strictObject({
   dof: z.number().positive().nullable(),
 });
 export type BudgetLine = z.infer<typeof BudgetLine>;
+
+/** A small effect on T0 that g is corrected for. Finite bob and hub are counted in the reduced length already. */
+export const CorrectionLine = z.strictObject({
+  term: z.enum(['finite_bob', 'hub', 'string_mass', 'buoyancy', 'added_mass', 'yielding_support']),
+  /** Relative change of T0 it makes: above 0 where it lengthens T0, and g would come out low without it. */
+  period_rel: z.number(),
+  /** What counting it adds to g. */
+  g_m_s2: z.number(),
+});
+export type CorrectionLine = z.infer<typeof CorrectionLine>;
 
 /** A result with what is needed to state it: U = coverage_factor × u covers 95 %. */
 export const Result = Measured.extend({
@@ -75,7 +90,14 @@ export const Motion = z.strictObject({
 });
 export type Motion = z.infer<typeof Motion>;
 
-export const MISSING = ['marks', 'amplitude', 'end_amplitude', 'length', 'swings'] as const;
+/** Readings of a rig that its kind cannot do without. `length` is the pivot to the bob, or that there is no rig at all. */
+export const RIG_READINGS = [
+  ...(['length', 'bob_diameter', 'bar_length', 'pivot_offset', 'inner_diameter'] as const),
+  ...(['bar_mass', 'bob_mass', 'centre_distance', 'gyration'] as const),
+] as const;
+export type RigReading = (typeof RIG_READINGS)[number];
+
+export const MISSING = ['marks', 'amplitude', 'end_amplitude', ...RIG_READINGS, 'swings'] as const;
 
 export const Analysis = z.strictObject({
   run_id: Uuid,
@@ -105,8 +127,11 @@ export const Analysis = z.strictObject({
   lag1: z.number().min(-1).max(1).nullable(),
   /** Null when none was fitted, or by methods that fit none. */
   motion: Motion.nullable().default(null),
+  /** Reduced length: that of the simple pendulum with the same T0, before the corrections that are none of length. */
   length_m: Measured.nullable(),
   g_m_s2: Result.nullable(),
+  /** Largest first. Analyses made before there were any have none. */
+  corrections: z.array(CorrectionLine).default([]),
   budget: z.array(BudgetLine),
   g_budget: z.array(BudgetLine),
   flags: z.array(Flag),

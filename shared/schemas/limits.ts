@@ -27,3 +27,10 @@ export const MAX_BENCH = 40;
 export const MAX_NOTE = 500;
 /** Swings a plan or a keyed reading may count. */
 export const MAX_SWINGS = 1_000;
+/** A mass of a rig, mg: 100 kg. */
+export const MAX_MASS_MG = 100_000_000;
+/** A hub's or clamp's moment of inertia, g mm²: 10 kg m². */
+export const MAX_INERTIA_G_MM2 = 10_000_000_000;
+/** Sideways stiffness of a support, N/m: below the least it is no support. */
+export const LEAST_STIFFNESS = 100;
+export const MOST_STIFFNESS = 1_000_000_000;

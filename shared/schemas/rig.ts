@@ -1,12 +1,21 @@
 import { z } from 'zod';
 import { Note } from './common';
+import { LEAST_STIFFNESS, MAX_INERTIA_G_MM2, MAX_MASS_MG, MOST_STIFFNESS } from './limits';
 
-/** How the pendulum was set up this time. Lengths are kept as they were read, in micrometres. */
+/**
+ * How the pendulum was set up this time. Readings are kept as they were read: lengths in micrometres, masses in
+ * milligrams. Fields marked `.optional()` came later and are left out, not null, while they are not given.
+ */
 
 const LengthUm = z.int().min(1).max(50_000_000);
+const MassMg = z.int().min(1).max(MAX_MASS_MG);
 
 export const RIG_KINDS = ['string_bob', 'bar', 'bar_bob', 'disc', 'ring', 'other'] as const;
 export type RigKind = (typeof RIG_KINDS)[number];
+
+/** A solid ball unless told; a disc lies flat in the plane of the swing. */
+export const BOB_SHAPES = ['ball', 'hollow_ball', 'disc'] as const;
+export type BobShape = (typeof BOB_SHAPES)[number];
 
 /**
  * One length reading of a string and bob. `to` says where the rule met the bob; the centre is
@@ -30,6 +39,25 @@ export const Rig = z.strictObject({
   bar_length_um: LengthUm.nullable(),
   pivot_offset_um: z.int().min(0).max(50_000_000).nullable(),
   label: Note,
+  bob_mass_mg: MassMg.optional(),
+  bob_shape: z.enum(BOB_SHAPES).optional(),
+  string_mass_mg: MassMg.optional(),
+  /** Of the bar, disc, ring or other body. */
+  bar_mass_mg: MassMg.optional(),
+  /** Standard uncertainty of one weighing, mg. */
+  mass_u_mg: z.int().min(0).max(1_000_000).optional(),
+  /** Of the bar, in the plane of the swing. */
+  bar_width_um: LengthUm.optional(),
+  /** Of the ring; with no offset given it hangs from its inner edge. */
+  inner_diameter_um: LengthUm.optional(),
+  /** Other: pivot to centre of mass, and radius of gyration about the centre of mass. */
+  centre_distance_um: LengthUm.optional(),
+  gyration_um: z.int().min(0).max(50_000_000).optional(),
+  /** Of what turns with the pivot and is centred on it (clamp, bearing, encoder disc), with its standard uncertainty. */
+  hub_inertia_g_mm2: z.int().min(0).max(MAX_INERTIA_G_MM2).optional(),
+  hub_inertia_u_g_mm2: z.int().min(0).max(MAX_INERTIA_G_MM2).optional(),
+  /** Sideways force on the support that moves it by a metre. */
+  support_stiffness_n_per_m: z.int().min(LEAST_STIFFNESS).max(MOST_STIFFNESS).optional(),
 });
 export type Rig = z.infer<typeof Rig>;
 

@@ -1,3 +1,5 @@
+import { dot, orthonormal } from './orthonormal';
+
 /** A straight line through points in order of time, with what the uncertainty of its slope needs. */
 export interface LineFit {
   slope: number;
@@ -24,13 +26,8 @@ export interface LineFit {
  */
 export function fitLine(x: number[], y: number[], isOdd?: boolean[]): LineFit | undefined {
   const columns = [x.map(() => 1), ...(isOdd ? [isOdd.map(Number)] : []), x];
-  const basis: number[][] = [];
-  for (const column of columns) {
-    const rest = without(column, basis);
-    const size = Math.sqrt(dot(rest, rest));
-    if (!(size > 1e-9 * Math.sqrt(dot(column, column)))) return undefined;
-    basis.push(rest.map((v) => v / size));
-  }
+  const basis = orthonormal(columns);
+  if (!basis) return undefined;
   const along = basis.at(-1)!;
   const rise = dot(along, x);
   const slopeWeights = along.map((q) => q / rise);
@@ -40,24 +37,6 @@ export function fitLine(x: number[], y: number[], isOdd?: boolean[]): LineFit | 
   const offset = isOdd ? average(flat.filter((_, i) => isOdd[i])) - intercept : 0;
   const residuals = flat.map((value, i) => value - intercept - (isOdd?.[i] ? offset : 0));
   return { slope, intercept, offset, residuals, slopeWeights, basis };
-}
-
-/** What is left of a column when its shares along an orthonormal basis are taken away; twice, for rounding. */
-function without(column: number[], basis: number[][]): number[] {
-  const rest = column.slice();
-  for (let turn = 0; turn < 2; turn += 1) {
-    for (const q of basis) {
-      const share = dot(q, rest);
-      for (let i = 0; i < rest.length; i += 1) rest[i]! -= share * q[i]!;
-    }
-  }
-  return rest;
-}
-
-function dot(a: number[], b: number[]): number {
-  let sum = 0;
-  for (let i = 0; i < a.length; i += 1) sum += a[i]! * b[i]!;
-  return sum;
 }
 
 function average(numbers: number[]): number {

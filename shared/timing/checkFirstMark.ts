@@ -5,8 +5,8 @@ import type { RunView } from './runView';
 import { hypot } from '../statistics/hypot';
 
 const FEWEST_MARKS = 8;
-/** One good run in two hundred may be flagged. */
-const CONFIDENCE = 0.995;
+/** One good run in five hundred may be flagged. */
+const CONFIDENCE = 0.998;
 /** s. Half of the usual reaction to a release; what is less does not matter. */
 const LEAST_LATE = 0.06;
 /** T/T0 at 60°: in a first swing larger than that the averaged amplitude is no judge of one mark. */

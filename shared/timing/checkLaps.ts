@@ -1,5 +1,8 @@
+import { addedColumn } from '../statistics/addedColumn';
+import { hypot } from '../statistics/hypot';
 import { quantile } from '../statistics/quantile';
 import type { Finding } from './checkMarks';
+import { pauseAt } from './checkPause';
 import type { RunView, ViewMark } from './runView';
 
 /** Laps on either side that tell what a lap is like here: the period itself falls with the amplitude. */
@@ -16,7 +19,8 @@ const FOLLOW = 0.5;
  * not make a long lap and a short one look like faults; each mark is then so many steps of the beat
  * after the last. Works the same for every pass, every swing and every k-th.
  *
- * @returns `double` on the mark that fits the beat less well; `missed` on the mark after the hole
+ * @returns `double` on the mark that fits the beat less well; `missed` on the mark after the hole, or `pause`
+ *          there when the hole is no whole number of laps
  */
 export function checkLaps({ marks, swingsPerMark }: RunView): Finding[] {
   const used = marks.filter((mark) => mark.swing !== null);
@@ -26,6 +30,9 @@ export function checkLaps({ marks, swingsPerMark }: RunView): Finding[] {
 
   const distance = thresholdDistance(laps);
   const findings: Finding[] = [];
+  /** For each mark the steps of the beat since the first; of one struck twice none. */
+  const beats: (number | null)[] = [0];
+  let counted = 0;
   let beat = used[0]!.time;
   let last = { mark: used[0]!, off: 0 };
   used.slice(1).forEach((mark, i) => {
@@ -36,15 +43,45 @@ export function checkLaps({ marks, swingsPerMark }: RunView): Finding[] {
       const off = mark.time - beat;
       const worse = Math.abs(off) < Math.abs(last.off) && last.mark !== used[0] ? last.mark : mark;
       findings.push(double(worse, mark.time - last.mark.time, typical));
+      beats.push(null);
       return;
     }
     const taken = seen > stated + distance ? Math.max(Math.round(seen), stated + 1) : stated;
     if (taken > stated) findings.push(missed(mark, mark.time - last.mark.time, typical, taken - stated));
     const off = mark.time - (beat + taken * typical);
+    counted += taken;
+    beats.push(counted);
     beat += taken * typical + FOLLOW * off;
     last = { mark, off: mark.time - beat };
   });
-  return findings;
+  const jitter = jitterOf(laps);
+  return findings.map((finding) => {
+    if (finding.code !== 'missed') return finding;
+    const at = used.findIndex(({ mark }) => mark === finding.mark);
+    const shift = shiftAt(at, used, beats, swingsPerMark === 0.5);
+    const lap = finding.seen.typical_lap_s!;
+    return shift && Math.abs(shift.size) > Math.max(LEAST_SHIFT * lap, DEVIATIONS * jitter * shift.weight)
+      ? pauseAt(used, at, lap, shift.size)
+      : finding;
+  });
+}
+
+/** Of a lap; a hole that is so far from a whole number of laps, and by more than jitter explains, is none of missing marks. */
+const LEAST_SHIFT = 0.1;
+
+/**
+ * By how much later than whole laps the beat goes on from a mark on, seen from the marks around it, s, and how
+ * much the jitter of one mark counts in that.
+ */
+function shiftAt(at: number, used: ViewMark[], beats: (number | null)[], isBothWays: boolean) {
+  const near = used.map((_, i) => i).filter((i) => beats[i] !== null && i >= at - NEIGHBOURS && i < at + NEIGHBOURS);
+  if (near.filter((i) => i < at).length < 2 || near.filter((i) => i >= at).length < 2) return undefined;
+  const fit = addedColumn(
+    near.map((i) => used[i]!.time),
+    [near.map(() => 1), near.map((i) => beats[i]!), ...(isBothWays ? [near.map((i) => beats[i]! % 2)] : [])],
+    near.map((i) => Number(i >= at)),
+  );
+  return fit && { size: fit.size, weight: hypot(...fit.slopeWeights) };
 }
 
 function double({ mark }: ViewMark, lap: number, typical: number): Finding {
@@ -73,13 +110,17 @@ function typicalAround(laps: number[], i: number): number {
 }
 
 /**
- * In laps. Jitter from each lap and the next but one: a limp and a slow change drop out, and by the
- * median the faults looked for do not hide themselves. A difference of two such laps has 4 times the
+ * Standard deviation of a mark, s. From each lap and the next but one: a limp and a slow change drop out, and
+ * by the median the faults looked for do not hide themselves. A difference of two such laps has 4 times the
  * variance of a mark.
  */
-function thresholdDistance(laps: number[]): number {
+function jitterOf(laps: number[]): number {
   const changes = laps.slice(2).map((lap, k) => Math.abs(lap - laps[k]!));
-  const jitter = changes.length === 0 ? 0 : (1.4826 * quantile(changes, 0.5)) / 2;
+  return changes.length === 0 ? 0 : (1.4826 * quantile(changes, 0.5)) / 2;
+}
+
+/** In laps. */
+function thresholdDistance(laps: number[]): number {
   const typical = typicalAround(laps, Math.floor(laps.length / 2));
-  return Math.min(Math.max((DEVIATIONS * jitter) / typical, LEAST_DISTANCE), MOST_DISTANCE);
+  return Math.min(Math.max((DEVIATIONS * jitterOf(laps)) / typical, LEAST_DISTANCE), MOST_DISTANCE);
 }

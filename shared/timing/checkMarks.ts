@@ -1,10 +1,16 @@
 import type { Flag } from '../schemas/analysis';
 import type { Measured } from '../schemas/common';
+import type { AmplitudePoint } from '../physics/amplitudeCurve';
 import { checkChatter } from './checkChatter';
 import { checkCount } from './checkCount';
+import { checkDrift } from './checkDrift';
 import { checkFirstMark } from './checkFirstMark';
 import { checkLaps } from './checkLaps';
+import { checkOffCentre } from './checkOffCentre';
 import { checkOutliers } from './checkOutliers';
+import { checkPause } from './checkPause';
+import { checkPlausible } from './checkPlausible';
+import { checkRoundNumbers } from './checkRoundNumbers';
 import type { RunView } from './runView';
 
 /** What a fit has found so far; null and empty while there is nothing. */
@@ -13,8 +19,16 @@ export interface Known {
   elapsed: number[];
   /** For each mark in force, observed minus calculated, s. */
   residuals: number[];
+  /** How marks pull the fit along: see `Scattered`. */
+  basis: number[][];
   period: Measured | null;
   smallPeriod: Measured | null;
+  /** Amplitudes as read. */
+  readings: AmplitudePoint[];
+  /** True when the pendulum's motion was fitted, not a line. */
+  followsMotion: boolean;
+  /** Where a gate stands, rad; null when the motion does not say. */
+  gateAngle: Measured | null;
 }
 
 /** A flag before anybody looked at it. */
@@ -25,13 +39,9 @@ export type Finding = Omit<Flag, 'answered'>;
  * jitter. A flag somebody kept comes back answered.
  */
 export function checkMarks(view: RunView, known: Known): Flag[] {
-  const laps = checkLaps(view);
   const findings = [
-    ...laps,
-    // With laps in doubt the line is no judge of single marks or the count.
-    ...(laps.length === 0
-      ? [...checkFirstMark(view, known), ...checkOutliers(view, known), ...checkCount(view, known)]
-      : []),
+    ...checkTiming(view, known),
+    ...checkRoundNumbers(view),
     ...checkChatter(view),
     ...checkRecording(view),
   ];
@@ -39,6 +49,23 @@ export function checkMarks(view: RunView, known: Known): Flag[] {
     ...finding,
     answered: view.kept.some(({ flag, mark }) => flag === finding.code && mark === finding.mark),
   }));
+}
+
+/** From the coarse to the fine: while the laps or the beat are in doubt the fit is no judge of single marks or the count. */
+function checkTiming(view: RunView, known: Known): Finding[] {
+  const laps = checkLaps(view);
+  if (laps.length > 0) return laps;
+  const pause = checkPause(view, known);
+  if (pause.length > 0) return pause;
+  const count = checkCount(view, known);
+  return [
+    ...checkFirstMark(view, known),
+    ...checkOutliers(view, known),
+    ...count,
+    ...(count.length === 0 ? checkPlausible(view, known) : []),
+    ...checkOffCentre(view, known),
+    ...checkDrift(view, known),
+  ];
 }
 
 /** What the pad wrote down: the clocks parted, or the run was cut short. */

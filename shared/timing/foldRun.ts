@@ -15,12 +15,13 @@ import type { RunView, ViewAmplitude } from './runView';
  * @example foldRun(run, [edit({ kind: 'leave_out_mark', mark: 12 })]).marks[12].leftOut // true
  */
 export function foldRun(run: RawRun, edits: RawEdit[]): RunView {
-  const changes = inForce(edits.filter((edit) => edit.run_id === run.id)).map((edit) => edit.change);
+  const standing = inForce(edits.filter((edit) => edit.run_id === run.id));
+  const changes = standing.map((edit) => edit.change);
   const halved = changes.some((change) => change.kind === 'reread_as_half_swings');
   const capture = run.capture;
   const swingsPerMark = rawSwingsPerMark(run) * (halved ? 0.5 : 1);
   const setSwings = changes.findLast((change) => change.kind === 'set_swings')?.swings;
-  const described = describe(run, changes);
+  const described = { ...describe(run, changes), setAside: setAside(standing) };
 
   if (capture.kind === 'keyed_total') {
     const counted = capture.counted_to - (capture.first_count === 'one' ? 1 : 0);
@@ -37,7 +38,7 @@ export function foldRun(run: RawRun, edits: RawEdit[]): RunView {
 
   const blocks = capture.kind === 'gate' ? gateMarks(capture) : [];
   const times = capture.kind === 'gate' ? blocks.map((block) => block.time) : capture.mark_us.map((us) => us / 1e6);
-  const out = leftOut(changes);
+  const out = leftOut(changes, times.length);
   const pieces = new Set([...out, ...blocks.flatMap(({ partOf }, i) => (partOf === null ? [] : [i]))]);
   const numbered = numberMarks(times, { swingsPerMark, leftOut: pieces, gaps: gaps(run, changes) });
   const withBlocks = numbered.marks.map((mark, i) => {
@@ -70,13 +71,25 @@ export function inForce(edits: RawEdit[]): RawEdit[] {
   return kept;
 }
 
+/** Why a run does not count: the last word that sets it aside; null while it counts. */
+export function setAside(standing: RawEdit[]): RunView['setAside'] {
+  const edit = standing.findLast(({ change }) => change.kind === 'set_aside');
+  return edit ? { editId: edit.id, reason: edit.reason } : null;
+}
+
 function rawSwingsPerMark(run: RawRun): number {
   if (run.capture.kind === 'keyed_total') return 1;
   return run.capture.kind === 'gate' ? 0.5 : run.capture.swings_per_mark;
 }
 
-function leftOut(changes: EditChange[]): Set<number> {
-  return new Set(changes.filter((change) => change.kind === 'leave_out_mark').map((change) => change.mark));
+function leftOut(changes: EditChange[], marks: number): Set<number> {
+  const out = new Set<number>();
+  for (const change of changes) {
+    if (change.kind === 'leave_out_mark') out.add(change.mark);
+    if (change.kind !== 'keep_part') continue;
+    for (let mark = 0; mark < marks; mark += 1) if (mark < change.from_mark || mark > change.to_mark) out.add(mark);
+  }
+  return out;
 }
 
 /** Marks missing before each mark: told on the pad, then added by edits. */

@@ -39,6 +39,8 @@ export interface RunView {
   notes: string[];
   /** Flags somebody looked at and left as they are. */
   kept: { flag: FlagCode; mark: number | null }[];
+  /** The edit by which the run does not count, and why; null while it counts. */
+  setAside: { editId: string; reason: string } | null;
 }
 
 /** An amplitude reading whose swing may lie before the first mark in force. */

@@ -1,8 +1,11 @@
+/** How long the browser may take to fetch what it saves, ms. */
+const KEPT_MS = 60_000;
+
 /** Gives a text to the browser as a file of this name to keep. */
-export function saveFile(name: string, text: string): void {
+export function saveFile(name: string, text: string, type = 'application/json'): void {
   const link = document.createElement('a');
-  link.href = URL.createObjectURL(new Blob([text], { type: 'application/json' }));
+  link.href = URL.createObjectURL(new Blob([text], { type }));
   link.download = name;
   link.click();
-  URL.revokeObjectURL(link.href);
+  setTimeout(() => URL.revokeObjectURL(link.href), KEPT_MS);
 }

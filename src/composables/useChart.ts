@@ -52,17 +52,19 @@ export interface ChartOptions {
   picture: (size: { width: number; height: number }, theme: ChartTheme) => Picture | null;
 }
 
+/** Whether this browser can draw; where it cannot, tables say it all. */
+export const canDraw = (): boolean => Boolean(document.createElement('canvas').getContext('2d'));
+
 /**
  * Draws a picture with uPlot (loaded when first needed) and keeps it right: new data, new size, new
  * pixel ratio, other theme. Redraws are gathered into one a frame and nothing is animated. Where the
- * browser has no canvas, `isSupported` is false and the table says it all.
+ * browser has no canvas, nothing happens.
  */
 export function useChart(options: ChartOptions) {
-  const isSupported = Boolean(document.createElement('canvas').getContext('2d'));
   const themeChanges = useChartTheme();
   const chart = shallowRef<uPlot | null>(null);
   const size = shallowRef({ width: 0, height: 0 });
-  if (!isSupported) return { isSupported, chart };
+  if (!canDraw()) return { chart };
 
   let UPlot: typeof uPlot | null = null;
   let frame = 0;
@@ -111,7 +113,7 @@ export function useChart(options: ChartOptions) {
     observer.disconnect();
     chart.value?.destroy();
   });
-  return { isSupported, chart };
+  return { chart };
 }
 
 /** uPlot sets a scale only when there is data on it: the corners stand in, the paint function draws. */

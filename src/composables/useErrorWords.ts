@@ -15,8 +15,15 @@ export function useErrorWords() {
   /** The words for one field of a form, or null. */
   function fieldWords(cause: unknown, path: string): string | null {
     if (!(cause instanceof ApiError)) return null;
-    return cause.fields.find((field) => field.path === path)?.message ?? null;
+    const said = cause.fields.find((field) => field.path === path)?.message;
+    return said ? asSentence(said) : null;
   }
 
   return { words, fieldWords };
+}
+
+/** The server names a field and goes on in the middle of a sentence; beside the field it has to be a whole one. */
+function asSentence(said: string): string {
+  const whole = said.charAt(0).toUpperCase() + said.slice(1);
+  return /[.!?]$/.test(whole) ? whole : `${whole}.`;
 }

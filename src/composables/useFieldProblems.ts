@@ -1,5 +1,6 @@
 import {
   computed,
+  getCurrentInstance,
   inject,
   onScopeDispose,
   provide,
@@ -10,10 +11,18 @@ import {
   type MaybeRefOrGetter,
   type Ref,
 } from 'vue';
+import { focusFirstWrong } from './focusFirstWrong';
+
+interface Field {
+  /** Its problem in words, or null. */
+  words: MaybeRefOrGetter<string | null>;
+  /** The field's own part of the page. */
+  element: () => Element | null;
+}
 
 /** What the fields of one form tell each other: whose text could not be read, and whether to say so yet. */
 interface FieldProblems {
-  fields: Set<MaybeRefOrGetter<string | null>>;
+  fields: Set<Field>;
   isRevealed: Ref<boolean>;
 }
 
@@ -21,15 +30,17 @@ const KEY: InjectionKey<FieldProblems> = Symbol('field problems');
 
 /**
  * For the page around a form: how many fields below it hold a text that cannot be read, and a way to
- * make all of them say so at once, also those nobody has left yet.
+ * make all of them say so at once, also those nobody has left yet, and to bring the person to the first.
  */
 export function useFormProblems() {
   const problems: FieldProblems = { fields: shallowReactive(new Set()), isRevealed: ref(false) };
   provide(KEY, problems);
   return {
-    count: computed(() => [...problems.fields].filter((words) => toValue(words) !== null).length),
+    count: computed(() => [...problems.fields].filter(({ words }) => toValue(words) !== null).length),
     reveal: () => {
       problems.isRevealed.value = true;
+      const wrong = [...problems.fields].filter(({ words }) => toValue(words) !== null);
+      void focusFirstWrong(new Set(wrong.flatMap(({ element }) => element() ?? [])));
     },
   };
 }
@@ -43,8 +54,13 @@ export function useFormProblems() {
 export function useFieldProblem(words: MaybeRefOrGetter<string | null>) {
   const around = inject(KEY, null);
   const wasLeft = ref(false);
-  around?.fields.add(words);
-  onScopeDispose(() => around?.fields.delete(words));
+  const own = getCurrentInstance();
+  const field: Field = {
+    words,
+    element: () => (own?.proxy?.$el instanceof Element ? own.proxy.$el : null),
+  };
+  around?.fields.add(field);
+  onScopeDispose(() => around?.fields.delete(field));
   return {
     shown: computed(() => (wasLeft.value || around?.isRevealed.value ? toValue(words) : null)),
     leave: () => {

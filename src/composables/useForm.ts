@@ -1,8 +1,10 @@
-import { computed, ref, shallowRef } from 'vue';
+import { computed, getCurrentInstance, ref, shallowRef } from 'vue';
+import { focusFirstWrong } from './focusFirstWrong';
 import { useErrorWords } from './useErrorWords';
 
 /**
- * One form: checks its fields, sends it once at a time, and keeps the server's answer beside the fields.
+ * One form: checks its fields, sends it once at a time, and keeps the server's answer beside the fields. After a
+ * refusal the first field in error has the focus.
  *
  * @param checks  for each field path, its words for what is not right yet, or null
  * @param send    asks the server; a failure shows in words and loses nothing that was typed
@@ -12,6 +14,7 @@ export function useForm<Field extends string>(checks: Record<Field, () => string
   const wasTried = ref(false);
   const isSending = ref(false);
   const failure = shallowRef<unknown>(null);
+  const own = getCurrentInstance();
 
   const errors = computed(() => {
     const said = {} as Record<Field, string | null>;
@@ -29,7 +32,8 @@ export function useForm<Field extends string>(checks: Record<Field, () => string
   async function submit(): Promise<void> {
     wasTried.value = true;
     failure.value = null;
-    if (isSending.value || (Object.keys(checks) as Field[]).some((path) => checks[path]())) return;
+    if (isSending.value) return;
+    if ((Object.keys(checks) as Field[]).some((path) => checks[path]())) return showFirst();
     isSending.value = true;
     try {
       await send();
@@ -38,6 +42,12 @@ export function useForm<Field extends string>(checks: Record<Field, () => string
     } finally {
       isSending.value = false;
     }
+    if (failure.value !== null) await showFirst();
+  }
+
+  async function showFirst(): Promise<void> {
+    const root: unknown = own?.proxy?.$el;
+    if (root instanceof Element) await focusFirstWrong([root]);
   }
 
   return { errors, problem, isSending, submit };

@@ -29,6 +29,14 @@ export function usePadWords(view: Readonly<Ref<PadView>>, plan: RecordingPlan) {
     heard.value = lastDone.value;
   }
 
+  /** A contact that became no mark: said quietly, and the count stays. A frame later, so that the tap just before it has been shown. */
+  function notCounted(why: 'bounce' | 'palm') {
+    requestAnimationFrame(() => {
+      lastDone.value = t(`pad.notCounted.${why}`);
+      heard.value = lastDone.value;
+    });
+  }
+
   watch(view, (now, before) => {
     if (now.count > before.count) lastDone.value = '';
     if (now.phase === 'grace' && before.phase !== 'grace') heard.value = left.value;
@@ -36,5 +44,5 @@ export function usePadWords(view: Readonly<Ref<PadView>>, plan: RecordingPlan) {
     else if (now.count > before.count && now.count % 5 === 0) heard.value = String(said.value);
   });
 
-  return { armed, left, padLabel, said, heard, lastDone, did, step };
+  return { armed, left, padLabel, said, heard, lastDone, did, notCounted, step };
 }

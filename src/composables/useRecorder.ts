@@ -181,10 +181,7 @@ export function useRecorder(options: RecorderOptions) {
       phase,
       count: fold.count,
       swingsLeft: planned_swings === null ? null : Math.max(0, planned_swings - swings),
-      steadiness: steadiness(
-        fold.marks.map((mark) => mark.at_us),
-        swings_per_mark,
-      ),
+      steadiness: steadiness(fold.marks, swings_per_mark),
       canUndo: fold.canUndo,
       canMiss: fold.canMiss,
       rewritten,

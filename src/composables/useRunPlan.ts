@@ -3,6 +3,8 @@ import type { RecordingPlan } from '@/db/localStore';
 import { readMeta, writeMeta } from '@/db/meta';
 import { useSession } from '@/stores/useSession';
 
+export type { RecordingPlan };
+
 /** After this long the rig has likely been changed: what was set up is offered, no longer taken. */
 const FRESH_MS = 4 * 3600 * 1000;
 

@@ -4,10 +4,14 @@ import { useSettings } from '@/stores/useSettings';
 /** Not more than three tone changes a second, whatever the pendulum. */
 const LEAST_BETWEEN_TONES_MS = 340;
 
+/** Two short ones: unlike the single one of a tap that counts, and weak enough to tap on. */
+const NOT_COUNTED_MS = [10, 60, 10];
+
 /**
  * What a person feels, hears and sees of a tap. Called after the time was taken; nothing here is waited for.
  *
  * @param surface  the element that changes its tone
+ * @returns        `counted` for a tap that became a mark; `notCounted` for a contact that did not
  */
 export function useTapFeedback(surface: () => HTMLElement | null) {
   const settings = useSettings();
@@ -34,9 +38,14 @@ export function useTapFeedback(surface: () => HTMLElement | null) {
 
   onScopeDispose(() => void audio?.close());
 
-  return function feedBack(at_ms: number): void {
-    tone(at_ms);
-    if (settings.haptics) navigator.vibrate?.(15);
-    if (settings.soundTick) tick();
+  return {
+    counted(at_ms: number): void {
+      tone(at_ms);
+      if (settings.haptics) navigator.vibrate?.(15);
+      if (settings.soundTick) tick();
+    },
+    notCounted(): void {
+      if (settings.haptics) navigator.vibrate?.(NOT_COUNTED_MS);
+    },
   };
 }

@@ -65,3 +65,41 @@ export async function savedSettings(): Promise<Record<string, unknown>> {
 export async function saveSettings(settings: Record<string, unknown>): Promise<void> {
   await store.rows.put({ key: 'settings', content: settings });
 }
+
+/** A joining on its way: what was typed, and the id it is known by. */
+interface Joining {
+  words: string;
+  join_id: string;
+}
+/** More than one, for somebody who corrects a name and comes back to it. */
+const MOST_JOININGS = 8;
+
+/**
+ * The id of this joining, made once: the same words sent again because no answer came, after a reload too, are
+ * the same joining, and the server then tells the PIN again.
+ */
+export function joiningId(words: string): Promise<string> {
+  return keptJoiningId(words).catch(() => {
+    // A phone that keeps nothing can join all the same; the id then lasts as long as the page.
+    const made = unkeptJoinings.get(words) ?? uuidv4();
+    unkeptJoinings.set(words, made);
+    return made;
+  });
+}
+const unkeptJoinings = new Map<string, string>();
+
+function keptJoiningId(words: string): Promise<string> {
+  return store.transaction('rw', store.rows, async () => {
+    const known = (await read<Joining[]>('joinings')) ?? [];
+    const found = known.find((joining) => joining.words === words);
+    if (found) return found.join_id;
+    const made: Joining = { words, join_id: uuidv4() };
+    await store.rows.put({ key: 'joinings', content: [...known, made].slice(-MOST_JOININGS) });
+    return made.join_id;
+  });
+}
+
+/** Somebody joined, and is kept here: whoever types the same words next is somebody else. */
+export async function forgetJoinings(): Promise<void> {
+  await store.rows.delete('joinings');
+}

@@ -35,20 +35,22 @@ export async function boardPicture(
 ): Promise<{ head: BoardHead | null; points: BoardPoint[] }> {
   const head = (await readMeta<BoardHead>(store, `board:${pass}`)) ?? null;
   const rows = await store.boardPoints.where({ pass }).toArray();
-  return { head, points: rows.map(withoutPass) };
+  return { head, points: rows.map(pointOf) };
 }
 
 /** Lays an answer over the kept picture: new and changed points only, or all of them after a fresh start. */
 export function keepBoard(store: LocalStore, pass: string, head: BoardHead, points: BoardPoint[], fresh: boolean) {
   return store.transaction('rw', store.boardPoints, store.meta, async () => {
     if (fresh) await store.boardPoints.where({ pass }).delete();
-    await store.boardPoints.bulkPut(points.map((point) => ({ ...point, pass })));
+    const [off, on] = [points.filter(({ set_aside }) => set_aside), points.filter(({ set_aside }) => !set_aside)];
+    await store.boardPoints.bulkPut(on.map((point) => ({ ...point, pass })));
+    await store.boardPoints.bulkDelete(off.map(({ run_id }) => [pass, run_id]));
     await writeMeta(store, `board:${pass}`, head);
   });
 }
 
-function withoutPass(row: BoardPoint & { pass?: string }): BoardPoint {
-  const point = { ...row };
-  delete point.pass;
-  return point;
+/** A row as it was kept; those of earlier versions hold no U, and had twice u shown. */
+function pointOf({ run_id, bench, small_period_s: kept, length_m, open_flags }: BoardPoint): BoardPoint {
+  const small_period_s = kept && { ...kept, expanded_u: kept.expanded_u ?? 2 * kept.u };
+  return { run_id, bench, small_period_s, length_m, open_flags };
 }

@@ -10,19 +10,40 @@ export async function feedCursor(store: LocalStore): Promise<number> {
   return (await readMeta<number>(store, 'cursor')) ?? 0;
 }
 
+/** A page of the feed, and what of it could not be understood by the version of the app that read it. */
+export type ReadFeed = FeedAnswer & { reader: string; not_understood: number[] };
+
+/** Where the feed held the first thing that a reader did not understand. */
+interface NotUnderstood {
+  reader: string;
+  before: number;
+}
+
 /**
  * Writes a page of the feed and its cursor down, in one transaction. An item whose text is damaged, or not
- * its own, is passed over; a text kept here is never replaced.
+ * its own, is passed over; a text kept here is never replaced. What this version of the app does not
+ * understand is passed over and remembered: the first page that another version reads sets the cursor back to it.
  *
  * @returns true when the server's epoch changed: everything made here waits again, and the feed starts over
  */
-export function applyFeed(store: LocalStore, answer: FeedAnswer): Promise<boolean> {
+export function applyFeed(store: LocalStore, page: ReadFeed): Promise<boolean> {
   return store.transaction('rw', store.runs, store.edits, store.analyses, store.meta, async () => {
-    const changed = await followEpoch(store, answer.server_epoch);
-    for (const item of answer.items) await applyItem(store, item);
-    if (!changed) await writeMeta(store, 'cursor', answer.cursor);
+    const changed = await followEpoch(store, page.server_epoch);
+    for (const item of page.items) await applyItem(store, item);
+    if (!changed) await writeMeta(store, 'cursor', await cursorAfter(store, page));
     return changed;
   });
+}
+
+async function cursorAfter(store: LocalStore, { reader, not_understood: [first], cursor }: ReadFeed): Promise<number> {
+  const known = await readMeta<NotUnderstood>(store, 'not_understood');
+  if (known && known.reader !== reader) {
+    await store.meta.delete('not_understood');
+    return Math.min(cursor, known.before);
+  }
+  if (first !== undefined && !(known && known.before < first))
+    await writeMeta(store, 'not_understood', { reader, before: first - 1 } satisfies NotUnderstood);
+  return cursor;
 }
 
 /** Notes which life of the server answered; see {@link applyFeed} for what a new one does. */
@@ -52,6 +73,7 @@ async function followEpoch(store: LocalStore, epoch: string): Promise<boolean> {
   await store.runs.filter(isMineReceived).modify(again);
   await store.edits.filter(isMineReceived).modify(again);
   await writeMeta(store, 'cursor', 0);
+  await store.meta.delete('not_understood');
   return true;
 }
 

@@ -20,16 +20,15 @@ export async function outbox(store: LocalStore, except: ReadonlySet<string>, mos
     .map(({ item }) => item);
 }
 
-/** How many runs and edits wait for a receipt, told anew on every change. */
-export function watchWaiting(store: LocalStore): Observable<number> {
-  return liveQuery(() => countWaiting(store));
+/** How many runs and edits wait for a receipt, and how many were not taken, told anew on every change. */
+export function watchOutbox(store: LocalStore): Observable<{ waiting: number; refused: number }> {
+  return liveQuery(async () => ({ waiting: await count(store, 'waiting'), refused: await count(store, 'refused') }));
 }
 
-export async function countWaiting(store: LocalStore): Promise<number> {
-  const [runs, edits] = await Promise.all([
-    store.runs.where({ state: 'waiting' }).count(),
-    store.edits.where({ state: 'waiting' }).count(),
-  ]);
+export const countWaiting = (store: LocalStore): Promise<number> => count(store, 'waiting');
+
+async function count(store: LocalStore, state: SendInfo['state']): Promise<number> {
+  const [runs, edits] = await Promise.all([store.runs.where({ state }).count(), store.edits.where({ state }).count()]);
   return runs + edits;
 }
 

@@ -2,6 +2,7 @@ import { liveQuery, type Observable } from 'dexie';
 import { canonicalText, digestOf } from '@shared/schemas/canonical';
 import type { RawEdit } from '@shared/schemas/edit';
 import type { RawRun } from '@shared/schemas/run';
+import { wellFormedContent } from '@shared/schemas/wellFormed';
 import { strictly, type AnalysisRow, type EditRow, type LocalStore, type RunRow, type SendInfo } from './localStore';
 import { nextCreatedSeq } from './meta';
 
@@ -26,7 +27,7 @@ export interface RunPlace {
  * harmless; another text under a known id is refused, and the kept one stays.
  */
 export async function addRun(store: LocalStore, run: RawRun, place: RunPlace): Promise<RunRow> {
-  const raw = canonicalText(run);
+  const raw = canonicalText(wellFormedContent(run));
   const digest = digestOf(raw);
   const disk = strictly(store);
   return disk.transaction('rw', disk.runs, disk.meta, async () => {
@@ -53,7 +54,7 @@ export async function addEdit(store: LocalStore, edit: Omit<RawEdit, 'made_seq'>
   const disk = strictly(store);
   return disk.transaction('rw', disk.edits, disk.meta, async () => {
     const mine = await disk.edits.where({ run_id: edit.run_id }).filter(isMine).count();
-    const raw = canonicalText({ ...edit, made_seq: mine + 1 });
+    const raw = canonicalText(wellFormedContent({ ...edit, made_seq: mine + 1 }));
     const created_seq = await nextCreatedSeq(disk);
     const row: EditRow = { ...WAITING, id: edit.id, run_id: edit.run_id, digest: digestOf(raw), raw, created_seq };
     await disk.edits.add(row);

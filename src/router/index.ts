@@ -17,7 +17,8 @@ router.beforeEach(async (to) => {
   const session = useSession();
   await session.ready;
   if (!session.isStaff) return { name: 'signIn', query: { to: to.fullPath } };
-  return needs === 'coordinator' && session.me?.kind !== 'coordinator' ? { name: 'desk' } : true;
+  const may = needs === 'staff' ? session.home === '/desk' : session.me?.kind === needs;
+  return may || session.home;
 });
 
 /** The pad has its texts from the start; the others come before the first page that shows them. */

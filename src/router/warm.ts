@@ -13,6 +13,8 @@ export function warmFieldPages(whenIdle: (work: () => void) => void = idle): voi
       import('@/pages/BenchPage.vue'),
       import('@/pages/PadPage.vue'),
       import('@/pages/RunPage.vue'),
+      import('@/components/run/RunDecay.vue'),
+      import('@/components/run/RunMotion.vue'),
       import('@/pages/RigPage.vue'),
       import('@/pages/HandInPage.vue'),
       import('@shared/schemas/accounts'),

@@ -4,6 +4,7 @@ import { digestOf } from '@shared/schemas/canonical';
 import type { RawEdit } from '@shared/schemas/edit';
 import { EDIT_FORMAT, EDIT_VERSION, RUN_FORMAT, RUN_VERSION } from '@shared/schemas/formats';
 import type { RawRun } from '@shared/schemas/run';
+import { inForce, setAside } from '@shared/timing/foldRun';
 import type { AnalysisRow, EditRow, RunRow } from '@/db/localStore';
 import type { StoredRuns } from '@/db/runs';
 
@@ -23,6 +24,8 @@ export interface RunEntry {
    * has; beside a refused run all do, for then this device alone has any of it.
    */
   readonly counted: EditEntry[];
+  /** The edit in force by which the run does not count, and who made it; null while it counts. */
+  readonly setAside: { reason: string; edit: EditEntry } | null;
   /** How many edits of it cannot be read here, and so do not count. */
   readonly unreadableEdits: number;
   /** Computed here, when first looked at. */
@@ -61,6 +64,10 @@ function makeEntry(row: RunRow, raw: RawRun, editRows: EditRow[], analyses: Anal
     raw,
     edits,
     counted,
+    get setAside() {
+      const word = setAside(inForce(counted.map((edit) => edit.raw)));
+      return word && { reason: word.reason, edit: counted.find((edit) => edit.raw.id === word.editId)! };
+    },
     unreadableEdits: editRows.length - edits.length,
     get analysis() {
       return analysed(run, counted);

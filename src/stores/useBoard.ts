@@ -25,7 +25,9 @@ export function useBoard(pass: string) {
   let isFresh = true;
 
   const lay = (news: BoardPoint[], over: ReadonlyMap<string, BoardPoint>) => {
-    points.value = new Map([...over, ...news.map((point) => [point.run_id, point] as const)]);
+    const laid = new Map([...over, ...news.map((point) => [point.run_id, point] as const)]);
+    for (const { run_id, set_aside } of news) if (set_aside) laid.delete(run_id);
+    points.value = laid;
   };
 
   async function begin(): Promise<void> {

@@ -2,7 +2,15 @@ import { defineStore } from 'pinia';
 import { computed, markRaw, shallowRef } from 'vue';
 import * as api from '@/api/accounts';
 import { ApiError } from '@/api/ApiError';
-import { noteSignOutOwed, owesSignOut, rememberedMe, rememberMe, watchRememberedMe } from '@/db/appStore';
+import {
+  forgetJoinings,
+  joiningId,
+  noteSignOutOwed,
+  owesSignOut,
+  rememberedMe,
+  rememberMe,
+  watchRememberedMe,
+} from '@/db/appStore';
 import { claimGuest, countGuestRuns } from '@/db/claimGuest';
 import { ownerKey, type LocalStore } from '@/db/localStore';
 import { askToKeep, openStoreOf } from '@/db/stores';
@@ -24,6 +32,8 @@ export const useSession = defineStore('session', () => {
   /** confirmed: the server said so on this page load. expired: it knows this browser no more. */
   const standing = shallowRef<'unknown' | 'confirmed' | 'expired'>('unknown');
   const isStaff = computed(() => me.value !== null && me.value.kind !== 'student');
+  /** Where this person's work begins: the Desk is for whoever has classes. */
+  const home = computed(() => (me.value?.kind === 'teacher' || me.value?.kind === 'coordinator' ? '/desk' : '/bench'));
 
   async function enter(who: Me | null): Promise<void> {
     const opened = markRaw(await openStoreOf(who));
@@ -118,12 +128,16 @@ export const useSession = defineStore('session', () => {
   }
 
   /** `claim` takes runs timed on this phone without a class along. The PIN is told once: `onPin` has it first of all. */
-  const join = (body: Body<typeof api.join>, claim: boolean, onPin?: (pin: string) => void) =>
-    come(
-      () => api.join(body),
+  async function join(place: Omit<Body<typeof api.join>, 'join_id'>, claim: boolean, onPin?: (pin: string) => void) {
+    const join_id = await joiningId(JSON.stringify(place));
+    const answer = await come(
+      () => api.join({ ...place, join_id }),
       claim,
       ({ pin }) => onPin?.(pin),
     );
+    await forgetJoinings();
+    return answer;
+  }
   const comeBack = (body: Body<typeof api.comeBack>, claim: boolean) => come(() => api.comeBack(body), claim);
   const signIn = (body: Body<typeof api.signIn>, claim: boolean) => come(() => api.signIn(body), claim);
   const setUp = (body: Body<typeof api.setUp>) => come(() => api.setUp(body), false);
@@ -159,6 +173,7 @@ export const useSession = defineStore('session', () => {
     storageTrouble,
     standing,
     isStaff,
+    home,
     ready,
     askTheServer,
     isOwner,

@@ -1,5 +1,6 @@
 import { defineStore } from 'pinia';
 import { reactive, toRefs, watch } from 'vue';
+import type { MethodProfile } from '@shared/analysis/summariseRepeats';
 import { savedSettings, saveSettings } from '@/db/appStore';
 
 export interface Settings {
@@ -12,6 +13,11 @@ export interface Settings {
   /** The dot on the pad that says how evenly the taps come. */
   steadinessDot: boolean;
   decimalMark: '.' | ',';
+  /** Where the device is used, for normal gravity; null until somebody says it. To a tenth of a degree. */
+  latitudeDeg: number | null;
+  heightM: number | null;
+  /** How the mean of repeats is stated. */
+  repeatProfile: MethodProfile;
 }
 
 const DEFAULTS: Settings = {
@@ -22,6 +28,9 @@ const DEFAULTS: Settings = {
   gloveMode: false,
   steadinessDot: true,
   decimalMark: '.',
+  latitudeDeg: null,
+  heightM: null,
+  repeatProfile: 'gum',
 };
 
 /** How this device is set. Kept on the device, for whoever uses it. */

@@ -5,18 +5,26 @@ import { fetchFeed, sendBatch } from '@/api/sync';
 import { deviceId } from '@/db/appStore';
 import { ownerKey, type LocalStore } from '@/db/localStore';
 import { readMeta } from '@/db/meta';
-import { sendOnceMore, watchWaiting } from '@/db/outbox';
+import { sendOnceMore, watchOutbox } from '@/db/outbox';
 import { syncRound, type RoundOutcome } from '@/sync/round';
 import { createSchedule, type Schedule } from '@/sync/schedule';
 import { browserLocks } from '@/sync/uploadLock';
 import { useSession } from './useSession';
 
 /**
- * guest: no account to send to. starting: what waits was not counted yet. quiet: nothing waits. The rest say
- * what keeps the waiting ones.
+ * guest: no account to send to. starting: what waits was not counted yet. quiet: all was received. not_taken:
+ * nothing waits, but something was refused. The rest say what keeps the waiting ones.
  */
 export type SyncState =
-  'guest' | 'starting' | 'quiet' | 'waiting' | 'sending' | 'unreachable' | 'signed_out' | 'storage_failed';
+  | 'guest'
+  | 'starting'
+  | 'quiet'
+  | 'not_taken'
+  | 'waiting'
+  | 'sending'
+  | 'unreachable'
+  | 'signed_out'
+  | 'storage_failed';
 
 const DESK_IDLE_MS = 4_000;
 const FIELD_IDLE_MS = 30_000;
@@ -25,6 +33,8 @@ const FIELD_IDLE_MS = 30_000;
 export const useSync = defineStore('sync', () => {
   const session = useSession();
   const waiting = shallowRef(0);
+  /** Runs and edits the server will not have; they stay here. */
+  const refused = shallowRef(0);
   const isCounted = shallowRef(false);
   const isSending = shallowRef(false);
   const trouble = shallowRef<'unreachable' | 'storage_failed' | null>(null);
@@ -38,7 +48,8 @@ export const useSync = defineStore('sync', () => {
     if (session.standing === 'expired') return 'signed_out';
     if (trouble.value) return trouble.value;
     if (!isCounted.value) return 'starting';
-    return waiting.value > 0 ? 'waiting' : 'quiet';
+    if (waiting.value > 0) return 'waiting';
+    return refused.value > 0 ? 'not_taken' : 'quiet';
   });
 
   /** The server answered, about whatever it was. */
@@ -79,9 +90,10 @@ export const useSync = defineStore('sync', () => {
     });
     schedule = mine;
     void readMeta<number>(store, 'last_contact_wall_ms').then((at) => (lastContact_wall_ms.value ??= at ?? null));
-    const watching = watchWaiting(store).subscribe((now) => {
-      const isMore = now > waiting.value;
-      waiting.value = now;
+    const watching = watchOutbox(store).subscribe((now) => {
+      const isMore = now.waiting > waiting.value;
+      waiting.value = now.waiting;
+      refused.value = now.refused;
       isCounted.value = true;
       if (isMore) mine.wake();
     });
@@ -90,6 +102,7 @@ export const useSync = defineStore('sync', () => {
       watching.unsubscribe();
       mine.stop();
       waiting.value = 0;
+      refused.value = 0;
       isCounted.value = false;
       isSending.value = false;
       trouble.value = null;
@@ -123,5 +136,5 @@ export const useSync = defineStore('sync', () => {
     if (session.store) await sendOnceMore(session.store, type, id);
   }
 
-  return { state, waiting, lastContact_wall_ms, lastError, noteContact, sendNow, tryAgain };
+  return { state, waiting, refused, lastContact_wall_ms, lastError, noteContact, sendNow, tryAgain };
 });

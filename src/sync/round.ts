@@ -105,7 +105,7 @@ async function fetchNew(parts: RoundParts): Promise<boolean> {
     const answer = await parts.api.fetchFeed(await feedCursor(parts.store), FEED_PAGE);
     const changed = await applyFeed(parts.store, answer);
     isNewEpoch ||= changed;
-    if (!changed && !answer.more) return isNewEpoch;
+    if (!changed && !answer.more && (await feedCursor(parts.store)) === answer.cursor) return isNewEpoch;
   }
 }
 

@@ -2,6 +2,8 @@
 const benches: Record<string, () => Promise<unknown>> = {
   coverage: () => import('./coverage'),
   fit: () => import('./fit'),
+  fitInBrowser: () => import('./fitInBrowser'),
+  flags: () => import('./flags'),
   phones: () => import('./phones'),
   tap: () => import('./tap'),
 };

@@ -118,9 +118,11 @@ describe('the tap pad', () => {
     const palm = { x: 200, y: 600, radiusX: 70, radiusY: 90 };
     await cdp.send('Input.dispatchTouchEvent', { type: 'touchStart', touchPoints: [palm] });
     await cdp.send('Input.dispatchTouchEvent', { type: 'touchEnd', touchPoints: [] });
+    await page.locator('.pad-screen__done').getByText('Too broad for a fingertip').waitFor();
     await page.waitForTimeout(400);
     await tapAt([0, 45]);
     await count(2).waitFor();
+    await page.locator('[aria-live]').getByText('Too soon after the last tap: not counted').waitFor();
     await holdStop();
     const { mark_us, rejected } = await captureOnDisk();
     expect(mark_us).toHaveLength(3);

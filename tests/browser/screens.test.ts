@@ -62,6 +62,18 @@ describe('every screen', () => {
     }
     return found;
   }
+  /** Opens all that folds on a run's sheet, the line over the strip and the terms of the budgets. */
+  async function openFolds(page: Page): Promise<void> {
+    await page.getByRole('region', { name: 'Result' }).waitFor();
+    for (const summary of await page.locator('summary').all()) await summary.click();
+    await page.getByRole('slider', { name: 'Walk along the marks on the motion' }).waitFor();
+    await page.getByRole('slider', { name: 'Walk along the decay' }).press('ArrowRight');
+    await page.getByRole('button', { name: 'Lay the plain line over it' }).click();
+    for (const term of await page.locator('.budget__term').all()) await term.click();
+    // An open one is called otherwise.
+    const tables = page.getByRole('button', { name: 'Table', exact: true });
+    while ((await tables.count()) > 0) await tables.first().click();
+  }
   const heading = (page: Page) => page.getByRole('heading', { level: 1 }).first().waitFor({ state: 'attached' });
 
   it('before signing in has no violation', async () => {
@@ -123,9 +135,20 @@ describe('every screen', () => {
       const path = await run.getAttribute('href');
       found.push(...(await look(page, '/bench', async () => run.waitFor())));
       found.push(...(await look(page, path!, async () => page.getByRole('region', { name: 'Result' }).waitFor())));
+      found.push(...(await look(page, path!, openFolds)));
       found.push(...(await look(page, '/hand-in', heading)));
     }
     expect(found).toEqual([]);
+  });
+
+  it('of a plan with the planner beside it has no violation', async () => {
+    const page = await pageOn(PHONE);
+    const beside = async () => {
+      await page.getByText('Is this plan good enough?').click();
+      await page.getByRole('button', { name: /^Use \d+ swings$/ }).waitFor();
+      await page.getByRole('slider', { name: 'Walk along the forecast' }).waitFor();
+    };
+    expect(await look(page, '/bench/rig', beside)).toEqual([]);
   });
 
   it('of the Desk has no violation', async () => {
@@ -151,6 +174,31 @@ describe('every screen', () => {
     expect(
       await look(page, '/desk/people', async () => page.getByText('volunteer@example.org').first().waitFor()),
     ).toEqual([]);
+  });
+
+  it('of the Board keeps picture and words apart at every text size, on one projector screen', async () => {
+    const page = await pageOn(PROJECTOR);
+    await page.goto(`${site.url}/board/${demo.classes[0]!.board_pass}`);
+    await page.locator('.dot-plot canvas').waitFor();
+    for (const step of [0, 1, 2, 3, 4, 5]) {
+      if (step > 0) await page.locator('main').press('+');
+      await page.waitForTimeout(300);
+      const seen = await page.evaluate(() => {
+        const box = (name: string) => document.querySelector(name)!.getBoundingClientRect();
+        return {
+          apart: box('.board-foot').top - box('.dot-plot').bottom,
+          picture: box('.dot-plot').height / innerHeight,
+          tooHigh: document.documentElement.scrollHeight - innerHeight,
+        };
+      });
+      expect([step, seen.apart >= 0, seen.picture > 0.3, seen.tooHigh <= 0, seen]).toEqual([
+        step,
+        true,
+        true,
+        true,
+        seen,
+      ]);
+    }
   });
 
   it('of the Board has no violation', async () => {

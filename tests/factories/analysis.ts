@@ -26,6 +26,7 @@ export function analysisOf(off_ms: (number | null)[], parts: Partial<Analysis> =
     motion: null,
     length_m: null,
     g_m_s2: null,
+    corrections: [],
     budget: [],
     g_budget: [],
     flags: [],

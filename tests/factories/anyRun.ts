@@ -3,7 +3,7 @@ import type { EditChange } from '@shared/schemas/edit';
 import type { AmplitudeReading, Rig } from '@shared/schemas/rig';
 import type { Capture, RawRun, TapCapture } from '@shared/schemas/run';
 import { FIRST_COUNTS } from '@shared/schemas/run';
-import { RIG_KINDS } from '@shared/schemas/rig';
+import { BOB_SHAPES, RIG_KINDS } from '@shared/schemas/rig';
 import { FLAG_CODES } from '@shared/schemas/edit';
 import { rawTapRun, uuid } from './rawRuns';
 
@@ -89,7 +89,10 @@ const amplitudes: fc.Arbitrary<AmplitudeReading[]> = fc.array(
   { maxLength: 5 },
 );
 
-const rig: fc.Arbitrary<Rig> = fc.record({
+const massMg = fc.oneof(fc.integer({ min: 1, max: 100_000_000 }), fc.constantFrom(300, 110_000));
+const inertia = fc.integer({ min: 0, max: 10_000_000_000 });
+
+const oldRig = {
   kind: fc.constantFrom(...RIG_KINDS),
   length_readings: fc.array(
     fc.record({ to: fc.constantFrom('centre' as const, 'top' as const, 'bottom' as const), um: lengthUm }),
@@ -100,7 +103,25 @@ const rig: fc.Arbitrary<Rig> = fc.record({
   bar_length_um: fc.option(lengthUm),
   pivot_offset_um: fc.option(fc.integer({ min: 0, max: 50_000_000 })),
   label: fc.constant(''),
-});
+};
+const laterReadings = {
+  bob_mass_mg: massMg,
+  bob_shape: fc.constantFrom(...BOB_SHAPES),
+  string_mass_mg: massMg,
+  bar_mass_mg: massMg,
+  mass_u_mg: fc.integer({ min: 0, max: 1_000_000 }),
+  bar_width_um: lengthUm,
+  inner_diameter_um: lengthUm,
+  centre_distance_um: lengthUm,
+  gyration_um: fc.integer({ min: 0, max: 50_000_000 }),
+  hub_inertia_g_mm2: inertia,
+  hub_inertia_u_g_mm2: inertia,
+  support_stiffness_n_per_m: fc.integer({ min: 100, max: 1_000_000_000 }),
+};
+const rig: fc.Arbitrary<Rig> = fc.record(
+  { ...oldRig, ...laterReadings },
+  { requiredKeys: Object.keys(oldRig) as (keyof typeof oldRig)[] },
+);
 
 const anyCapture: fc.Arbitrary<Capture> = fc.oneof(tap, keyedTotal, keyedSplits, gate);
 
@@ -117,6 +138,7 @@ const mark = fc.integer({ min: 0, max: 45 });
 export const anyChange: fc.Arbitrary<EditChange> = fc.oneof(
   fc.record({ kind: fc.constant('leave_out_mark' as const), mark }),
   fc.record({ kind: fc.constant('insert_gap' as const), before_mark: mark, count: fc.integer({ min: 1, max: 50 }) }),
+  fc.record({ kind: fc.constant('keep_part' as const), from_mark: mark, to_mark: mark }),
   fc.record({ kind: fc.constant('reread_as_half_swings' as const) }),
   fc.record({ kind: fc.constant('set_swings' as const), swings: fc.double({ min: 0.5, max: 1_000, noNaN: true }) }),
   fc.record({ kind: fc.constant('set_rig' as const), rig }),
@@ -127,6 +149,7 @@ export const anyChange: fc.Arbitrary<EditChange> = fc.oneof(
     flag: fc.constantFrom(...FLAG_CODES),
     mark: fc.option(mark),
   }),
+  fc.record({ kind: fc.constant('set_aside' as const) }),
   fc.record({
     kind: fc.constant('withdraw' as const),
     edit_id: fc.integer({ min: 1, max: 8 }).map((n) => uuid(0xed000 + n)),

@@ -82,7 +82,7 @@ export function rawEdit(run: Pick<RawRun, 'id'>, change: EditChange, parts: Part
     run_id: run.id,
     made_seq,
     made_wall_ms: 1_750_000_100_000 + made_seq,
-    reason: '',
+    reason: change.kind === 'set_aside' ? 'the stand moved' : '',
     change,
     ...parts,
   };

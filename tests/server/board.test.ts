@@ -1,3 +1,6 @@
+import { mkdtempSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { BoardAnswer } from '@shared/schemas/accounts';
 import { startServer, type TestServer } from '../support/startServer';
@@ -58,6 +61,59 @@ test('flags that nobody answered are counted, answered ones are not', async () =
   expect(before).toBeGreaterThan(0);
   must(await bench.post('/api/sync', batch([editItem(item.id, { kind: 'leave_out_mark', mark: 5 })])));
   expect(await open()).toBeLessThan(before);
+});
+
+test('a dot carries the uncertainty the Desk states', async () => {
+  const item = runItem();
+  const { analyses } = must(await school.student.post('/api/sync', batch([item])));
+  const { value, u, expanded_u, coverage_factor } = analyses[0].small_period_s;
+  const point = (await board()).points.find(({ run_id }) => run_id === item.id)!;
+  expect(point.small_period_s).toEqual({ value, u, expanded_u });
+  expect(coverage_factor).not.toBeCloseTo(2, 2);
+});
+
+test('a database of the version before gets the stated uncertainty of the runs it holds', async () => {
+  const dataDir = mkdtempSync(join(tmpdir(), 'swaymark-before-'));
+  try {
+    const first = await startServer({ dataDir });
+    const { student } = await createSchool(first);
+    const item = runItem();
+    const { analyses } = must(await student.post('/api/sync', batch([item])));
+    await first.running.deps.database.writeTransaction(async (transaction) => {
+      for (const sql of [
+        'ALTER TABLE current_analyses DROP COLUMN small_period_expanded_u_s',
+        'ALTER TABLE current_analyses DROP COLUMN set_aside',
+        `DELETE FROM migrations WHERE name = '0002-board-figures'`,
+      ])
+        await first.running.deps.database.run(sql, [], transaction);
+    });
+    await first.stop();
+    const second = await startServer({ dataDir });
+    const rows = await second.running.deps.database.select(
+      'SELECT small_period_expanded_u_s AS expanded_u, set_aside FROM current_analyses',
+      [],
+    );
+    expect(rows).toEqual([{ expanded_u: analyses[0].small_period_s.expanded_u, set_aside: 0 }]);
+    await second.stop();
+  } finally {
+    rmSync(dataDir, { recursive: true, force: true });
+  }
+});
+
+test('a run set aside comes after the cursor to be taken off, and comes back when that is undone', async () => {
+  const item = runItem();
+  must(await school.student.post('/api/sync', batch([item])));
+  const { cursor } = await board();
+  const aside = editItem(item.id, { kind: 'set_aside' }, 1, 'bob hit the stand');
+  must(await school.student.post('/api/sync', batch([aside])));
+  const off = await board(cursor);
+  expect(off.points).toEqual([
+    { run_id: item.id, bench: 1, small_period_s: null, length_m: null, open_flags: 0, set_aside: true },
+  ]);
+  must(await school.student.post('/api/sync', batch([editItem(item.id, { kind: 'withdraw', edit_id: aside.id }, 2)])));
+  const back = await board(off.cursor);
+  expect(back.points).toMatchObject([{ run_id: item.id, small_period_s: { value: expect.any(Number) as number } }]);
+  expect(back.points[0]).not.toHaveProperty('set_aside');
 });
 
 test('a pass nobody has, or none, shows nothing; a pass opens nothing else', async () => {

@@ -26,7 +26,10 @@ test('migrations make every table from nothing, once', async () => {
   await database.close();
   database = await openDatabase(dataDir);
   expect(await tables()).toEqual(first);
-  expect(await database.select('SELECT * FROM migrations', [])).toEqual([{ name: '0001-first-tables' }]);
+  expect(await database.select('SELECT * FROM migrations', [])).toEqual([
+    { name: '0001-first-tables' },
+    { name: '0002-board-figures' },
+  ]);
 });
 
 test('every model reads and writes the columns of its table', async () => {

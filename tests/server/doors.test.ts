@@ -171,6 +171,12 @@ describe('POST /api/return', () => {
     expect(reply.body.me.id).toBe(student.me.id);
     expect((await student.get('/api/me')).body.me.id).toBe(student.me.id);
   });
+  test.each([' abc def', 'abc-def', 'abc\u2011def\u00a0'])('a PIN typed like %j is the PIN', async (like) => {
+    const { code } = await createClass(school.teacher);
+    const { pin } = await joinStudent(server, code);
+    const typed = like.replace('abc', pin.slice(0, 3)).replace('def', pin.slice(3));
+    must(await guest().post('/api/return', { code, bench: 1, nickname: 'Otter', pin: typed }));
+  });
   test('does not tell a wrong PIN from an unknown nickname or class code', async () => {
     const { student, ownClass } = school;
     const said = { code: ownClass.code, bench: student.bench, nickname: student.nickname };

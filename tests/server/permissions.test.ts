@@ -6,8 +6,8 @@ import { routes } from '../../server/routes/index';
 import type { Route } from '../../server/routes/route';
 import { startServer, type TestServer } from '../support/startServer';
 import { createApiClient, type ApiClient, type Reply, type SendOptions } from './helpers/apiClient';
-import { createClass, createSchool, joinStudent, PASSWORD, signInStaff, type School } from './helpers/people';
-import { batch } from './helpers/runs';
+import { createClass, createSchool, joinStudent, must, PASSWORD, signInStaff, type School } from './helpers/people';
+import { batch, editItem, runItem } from './helpers/runs';
 
 /**
  * Who may do what, written down a second time, from the roles and rights table of the trade notes and
@@ -120,6 +120,24 @@ describe('what belongs to others', () => {
     });
     expect(entry?.actor_id).toBe(school.coordinator.me.id);
   });
+});
+
+test.each([
+  ['whoever timed it', 'student', 'stored'],
+  ['the class’s teacher', 'teacher', 'stored'],
+  ['another student', 'otherStudent', 'not_yours'],
+  ['another teacher', 'otherTeacher', 'not_yours'],
+  ['a volunteer', 'volunteer', 'not_yours'],
+  ['a coordinator without this class', 'coordinator', 'not_yours'],
+  ['another student of the bench', 'mate', 'not_your_run'],
+] as const)('setting a run aside: %s gets %s', async (_who, key, expected) => {
+  const item = runItem();
+  must(await school.student.post('/api/sync', batch([item])));
+  const mate = () => joinStudent(server, school.ownClass.code, 1, `M${(people += 1)}`);
+  const client = key === 'mate' ? await mate() : school[key];
+  const aside = editItem(item.id, { kind: 'set_aside' }, 1, 'bob hit the stand');
+  const [verdict] = must(await client.post('/api/sync', batch([aside]))).verdicts;
+  expect(verdict.code ?? verdict.verdict).toBe(expected);
 });
 
 let people = 0;

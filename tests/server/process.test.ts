@@ -151,6 +151,27 @@ test('a damaged database is told in words, with what to do, and restoring a back
   await start();
 });
 
+test('the last coordinator gets a one-time link from the command line, with the server stopped', async () => {
+  const ask = (email: string) => runProcess({ DATA_DIR: dataDir }, 'server/cli/resetLink.ts', [email]);
+  await setUp((await start()).setUpToken!);
+  expect(await ask('lead@example.org')).toMatchObject({
+    code: 1,
+    output: expect.stringMatching(/in use by a running Swaymark server\. Stop it first/) as string,
+  });
+  await end('SIGTERM');
+  expect(await ask('other@example.org')).toMatchObject({ code: 1, output: expect.stringMatching(/^No account/) });
+  expect(await ask('lead')).toMatchObject({ code: 2, output: expect.stringMatching(/^Name the e-mail/) });
+  const { code, output } = await ask(' Lead@example.org');
+  expect(code).toBe(0);
+  const token = /http:\/\/localhost:\d+\/reset\/([\w-]+)\n$/.exec(output)![1]!;
+  const client = createApiClient((await start()).url);
+  const password = 'eleven quiet pendulums';
+  must(await client.post('/api/password/reset', { token, password }));
+  must(await client.post('/api/sign-in', { email: 'lead@example.org', password }));
+  const again = await client.post('/api/password/reset', { token, password: 'twelve quiet pendulums' });
+  expect(again.status).toBe(410);
+});
+
 test('a folder that cannot be made is told in words', async () => {
   writeFileSync(join(folder, 'file'), '');
   const { code, output } = await runProcess({ DATA_DIR: join(folder, 'file', 'data') }, 'server/index.ts');

@@ -267,6 +267,30 @@ describe('what is not taken', () => {
     ).toEqual(['stored']);
   });
 
+  test('a run is set aside by whoever timed it or by the teacher, with a reason, and by nobody else of the bench', async () => {
+    const mate = await joinStudent(server, school.ownClass.code, 1, 'Heron');
+    const item = runItem();
+    must(await school.student.post('/api/sync', batch([item])));
+    const aside = () => editItem(item.id, { kind: 'set_aside' }, 1, 'bob hit the stand');
+    const send = async (who: ApiClient, edit: ReturnType<typeof editItem>) => {
+      const [verdict] = must(await who.post('/api/sync', batch([edit]))).verdicts;
+      return verdict.code ?? verdict.verdict;
+    };
+    expect(await send(school.student, editItem(item.id, { kind: 'set_aside' }))).toBe('fields');
+    expect(await send(mate, aside())).toBe('not_your_run');
+    const [own, teachers] = [aside(), aside()];
+    expect(await send(school.student, own)).toBe('stored');
+    const undo = (edit_id: string, made_seq: number) => editItem(item.id, { kind: 'withdraw', edit_id }, made_seq);
+    const undone = undo(own.id, 2);
+    expect(await send(mate, undo(own.id, 2))).toBe('not_your_run');
+    expect(await send(school.student, undone)).toBe('stored');
+    expect(await send(mate, undo(undone.id, 3))).toBe('not_your_run');
+    expect(await send(school.teacher, teachers)).toBe('stored');
+    expect(await send(school.student, undo(teachers.id, 4))).toBe('edit_of_staff');
+    expect(await send(school.otherTeacher, aside())).toBe('not_yours');
+    expect(await send(mate, editItem(item.id, { kind: 'note', text: 'seen' }, 5))).toBe('stored');
+  });
+
   test('an edit id that is held by its author does not open for another', async () => {
     const run = runItem();
     const edit = editItem(run.id, { kind: 'note', text: 'mine' });

@@ -8,9 +8,11 @@ import { selectWhereIn } from '../../models/selectWhereIn';
 import { noteActivity } from '../activity';
 import { newReceiptCode } from '../secrets';
 import type { Delivery, EditItem } from './handIn';
+import { settingOthersAside } from './setAsideRights';
 import {
   DAY_IS_FULL,
   EDIT_OF_STAFF,
+  NOT_YOUR_RUN,
   NOT_YOURS,
   OTHER_BYTES,
   RUN_NOT_TAKEN,
@@ -59,6 +61,7 @@ export async function storeEdits(
     [...verdicts].flatMap(([{ type, id }, verdict]) => (type === 'run' && isNeverTaken(verdict) ? [id] : [])),
   );
   const ofStaff = await editsOfStaff(deps, delivery, items, transaction);
+  const othersAside = await settingOthersAside(deps, delivery, items, runs, transaction);
   let left = MAX_EDITS_PER_DAY - (await editsToday(deps, delivery, transaction));
   const fresh: EditRow[] = [];
   for (const item of items) {
@@ -67,7 +70,8 @@ export async function storeEdits(
     const reason = there
       ? reasonAgainstHeld(delivery, item, there)
       : (reasonAgainstNew(delivery, run, notTakenRuns.has(item.run_id), left) ??
-        (ofStaff.has(withdrawnBy(item)) ? EDIT_OF_STAFF : undefined));
+        (ofStaff.has(withdrawnBy(item)) ? EDIT_OF_STAFF : undefined) ??
+        (othersAside.has(item) ? NOT_YOUR_RUN : undefined));
     if (reason) {
       verdicts.set(item, notTaken(item, reason));
       if (reason === NOT_YOURS) await noteActivity(deps, actor, 'edits.foreign_id', item.id, transaction);

@@ -64,6 +64,11 @@ export const RUN_NOT_TAKEN: Reason = {
   code: 'run_not_taken',
   message: 'The run this edit belongs to was not taken, so the edit has nothing to lie over.',
 };
+export const NOT_YOUR_RUN: Reason = {
+  verdict: 'refused',
+  code: 'not_your_run',
+  message: 'Whoever timed this run, or the teacher, sets it aside or takes it back. Ask one of them.',
+};
 export const EDIT_OF_STAFF: Reason = {
   verdict: 'refused',
   code: 'edit_of_staff',

@@ -63,3 +63,12 @@ export function shapeOf(
     flag: (gate?.flag ?? 0) * (places.flagError < 0 ? 1 : 1 + values[places.flagError]!),
   };
 }
+
+/** Whether the averaged law is too rough to judge by. */
+export function losesMuch(values: ArrayLike<number>, places: Places, rates: readonly number[]): boolean {
+  const amplitude = values[places.amplitude]!;
+  return -slopes(amplitude, dampingOf(values, places, rates))[0] > LARGE_LOSS * amplitude;
+}
+
+/** Where so large a share of the amplitude goes in the first swing, the averaged law is no good guide. */
+const LARGE_LOSS = 0.04;

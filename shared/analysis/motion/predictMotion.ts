@@ -1,7 +1,7 @@
 import { averagedAt, averagedMotion } from '../../physics/motion/averagedMotion';
 import type { Damping } from '../../physics/motion/damping';
 import { passOf, releaseMotion } from '../../physics/motion/motion';
-import { sineCosine } from '../../physics/motion/sineCosine';
+import { sin } from '../../physics/elementary';
 
 /** What in a swing was marked: its turning points, or its passes of an angle near the lowest point. */
 export type MotionEvent = 'turn' | 'pass';
@@ -58,8 +58,8 @@ export function predictAveraged(shape: Shape, asked: Questions): Prediction | un
     const { amplitude, time } = averagedAt(table, swing + QUARTER);
     // Down from the side of the release after a whole number of swings, else up.
     const side = Math.round(2 * swing) % 2 === 0 ? -1 : 1;
-    const k = sineCosine(amplitude / 2)[0];
-    const [offCentre] = sineCosine(shape.gateAngle / 2);
+    const k = sin(amplitude / 2);
+    const offCentre = sin(shape.gateAngle / 2);
     const x = offCentre / k;
     const speed = 2 * Math.sqrt(k * k - offCentre * offCentre);
     if (!(Math.abs(x) < LARGEST_SHARE)) return undefined;
@@ -69,7 +69,7 @@ export function predictAveraged(shape: Shape, asked: Questions): Prediction | un
     const short = shape.flag / speed;
     // The mean speed over the flag is below that at its middle by (dt)²/24.
     answer.blocked[i] = short * (1 + (short * short) / 24);
-    answer.blockedPerAngle[i] = (shape.flag * sineCosine(shape.gateAngle)[0]) / (speed * speed * speed);
+    answer.blockedPerAngle[i] = (shape.flag * sin(shape.gateAngle)) / (speed * speed * speed);
   }
   asked.amplitudesAt.forEach((swing, i) => (answer.amplitudes[i] = averagedAt(table, swing - asked.from).amplitude));
   return answer;

@@ -1,4 +1,4 @@
-import { sineCosine } from './sineCosine';
+import { cos, sin } from '../elementary';
 import type { Damping } from './damping';
 
 /** The law as a table over swings, evenly spaced; time in 1/ω0, counted from swing 0. */
@@ -85,8 +85,8 @@ export function averagedAt(table: AveragedMotion, swing: number): { amplitude: n
 export function slopes(amplitude: number, { viscous, quadratic, dry }: Damping): [lost: number, time: number] {
   if (!(amplitude > LEAST_AMPLITUDE)) return [0, 2 * Math.PI];
   const A = Math.min(amplitude, LARGEST_AMPLITUDE);
-  const [halfSine, halfCosine] = sineCosine(A / 2);
-  const [quarterSine] = sineCosine(A / 4);
+  const [halfSine, halfCosine] = [sin(A / 2), cos(A / 2)];
+  const quarterSine = sin(A / 4);
   // K = π/2a and E − k′²K = K (k² − Σ 2^(n−1) c_n²) from the same means: Abramowitz & Stegun 17.6.3, 17.6.4.
   let a = 1;
   let b = halfCosine;

@@ -1,5 +1,5 @@
 import type { Damping } from './damping';
-import { sineCosine } from './sineCosine';
+import { cos, sin } from '../elementary';
 
 /** A stretch of the way on which the angle is a polynomial of the time since its start. */
 export interface Piece {
@@ -36,7 +36,7 @@ const MOST_STEPS = 400;
  * @see Jorba & Zou, Exp. Math. 14, 99 (2005), for order and step (from memory)
  */
 export function halfSwing(amplitude: number, damping: Damping, tolerance = FINE): HalfSwing | undefined {
-  if (!(amplitude > 0 && amplitude < Math.PI) || sineCosine(amplitude)[0] <= damping.dry) return undefined;
+  if (!(amplitude > 0 && amplitude < Math.PI) || sin(amplitude) <= damping.dry) return undefined;
   const pieces: Piece[] = [];
   let start = 0;
   let at = amplitude;
@@ -92,13 +92,12 @@ export function slopeAt(coefficients: Float64Array, x: number): number {
 /** Taylor coefficients of θ while θ′ ≤ 0: θ″ = −sin θ − 2 viscous θ′ + quadratic θ′² + dry. */
 function series(at: number, rate: number, { viscous, quadratic, dry }: Damping): Float64Array {
   const angle = new Float64Array(ORDER + 1);
-  const start = sineCosine(at);
-  SINE[0] = start[0];
-  COSINE[0] = start[1];
+  SINE[0] = sin(at);
+  COSINE[0] = cos(at);
   angle[0] = at;
   angle[1] = rate;
   SCALED[1] = rate;
-  SCALED[2] = dry - start[0] - 2 * viscous * rate + quadratic * rate * rate;
+  SCALED[2] = dry - SINE[0] - 2 * viscous * rate + quadratic * rate * rate;
   angle[2] = SCALED[2] / 2;
   for (let k = 1; k <= ORDER - 2; k += 1) {
     let s = 0;

@@ -22,7 +22,7 @@ export function boardModel(points: BoardPoint[]): BoardModel {
         id: run_id,
         bench,
         period_s: small_period_s!.value,
-        u_s: small_period_s!.u,
+        expanded_u_s: small_period_s!.expanded_u,
         length_m,
         open_flags,
       })),
@@ -35,6 +35,7 @@ export function boardModel(points: BoardPoint[]): BoardModel {
 
 /** Decimal places that tell a class's periods apart: two digits of the spread, or of the uncertainty of a lone run. */
 export function periodPlaces(summary: BenchSummary): number {
-  const spread = (summary.high_s - summary.low_s) / 2 || Math.max(...summary.lanes[0]!.dots.map((dot) => dot.u_s));
+  const spread =
+    (summary.high_s - summary.low_s) / 2 || Math.max(...summary.lanes[0]!.dots.map((dot) => dot.expanded_u_s));
   return spread > 0 ? Math.min(6, Math.max(0, 1 - Math.floor(Math.log10(spread)))) : 3;
 }

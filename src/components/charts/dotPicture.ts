@@ -115,7 +115,7 @@ function paintBars(brush: Brush, placed: { dot: BenchDot; y: number }[], colour:
   context.fillStyle = colour;
   for (const { dot, y } of placed) {
     const line = Math.round(y - thick / 2);
-    const ends = [brush.x(dot.period_s - 2 * dot.u_s), brush.x(dot.period_s + 2 * dot.u_s)] as const;
+    const ends = [brush.x(dot.period_s - dot.expanded_u_s), brush.x(dot.period_s + dot.expanded_u_s)] as const;
     const [from, to] = [Math.round(Math.max(left, ends[0])), Math.round(Math.min(left + width, ends[1]))];
     context.fillRect(from, line, to - from, thick);
     for (const end of ends) {
@@ -126,17 +126,18 @@ function paintBars(brush: Brush, placed: { dot: BenchDot; y: number }[], colour:
   context.restore();
 }
 
-/** Words to the right of a mark; to the left of the edge when there is no room. */
+/** Words to the right of a mark and its bar; to the left of both when there is no room. */
 function paintBeside(brush: Brush, label: string, dot: BenchDot, y: number, { type, marker }: LaneSizes): void {
   const { context, theme, px, left, width } = brush;
-  const from = Math.max(brush.x(dot.period_s + 2 * dot.u_s), brush.x(dot.period_s) + px(marker));
+  const from = Math.max(brush.x(dot.period_s + dot.expanded_u_s), brush.x(dot.period_s) + px(marker));
   context.save();
   context.fillStyle = theme.ink;
   context.font = `${px(type * 0.85)}px ${theme.font}`;
   context.textBaseline = 'middle';
-  context.textAlign = 'left';
-  const room = left + width - context.measureText(label).width;
-  context.fillText(label, Math.min(from + px(marker * 0.8), room), y);
+  const isRight = from + px(marker * 0.8) + context.measureText(label).width <= left + width;
+  const to = Math.min(brush.x(dot.period_s - dot.expanded_u_s), brush.x(dot.period_s) - px(marker));
+  context.textAlign = isRight ? 'left' : 'right';
+  context.fillText(label, isRight ? from + px(marker * 0.8) : to - px(marker * 0.8), y);
   context.restore();
 }
 

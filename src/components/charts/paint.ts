@@ -64,3 +64,51 @@ export function paintLine(
   context.stroke();
   context.restore();
 }
+
+type Points = readonly (readonly [x: number, y: number])[];
+
+/** A line through points, in canvas pixels. */
+export function paintCurve(
+  brush: Brush,
+  points: Points,
+  stroke: { colour: string; width_px: number; dash_px?: number[] },
+): void {
+  const { context, px } = brush;
+  context.save();
+  clipToPlot(brush);
+  context.strokeStyle = stroke.colour;
+  context.lineWidth = px(stroke.width_px);
+  context.lineJoin = 'round';
+  context.setLineDash((stroke.dash_px ?? []).map(px));
+  context.beginPath();
+  points.forEach(([x, y], i) => (i === 0 ? context.moveTo(x, y) : context.lineTo(x, y)));
+  context.stroke();
+  context.restore();
+}
+
+/** The ground between two lines with the same x, in canvas pixels. */
+export function paintShade(brush: Brush, upper: Points, lower: Points, colour: string, opacity: number): void {
+  const { context } = brush;
+  context.save();
+  clipToPlot(brush);
+  context.globalAlpha = opacity;
+  context.fillStyle = colour;
+  context.beginPath();
+  [...upper, ...[...lower].reverse()].forEach(([x, y], i) => (i === 0 ? context.moveTo(x, y) : context.lineTo(x, y)));
+  context.fill();
+  context.restore();
+}
+
+/** An upright bar with caps, in canvas pixels. */
+export function paintBar(brush: Brush, x: number, [from, to]: readonly [number, number], colour: string): void {
+  const cap = brush.px(4);
+  const stroke = { colour, width_px: 1.75 };
+  paintLine(brush, [x, from], [x, to], stroke);
+  for (const end of [from, to]) paintLine(brush, [x - cap, end], [x + cap, end], stroke);
+}
+
+function clipToPlot({ context, left, top, width, height }: Brush): void {
+  context.beginPath();
+  context.rect(left, top, width, height);
+  context.clip();
+}

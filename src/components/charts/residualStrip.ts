@@ -1,6 +1,8 @@
+import { plainLine } from '@shared/analysis/pictures/plainLine';
 import type { Analysis } from '@shared/schemas/analysis';
 import type { FlagCode } from '@shared/schemas/edit';
 import type { Shape } from './markers';
+import { msPlaces } from '@shared/units/msPlaces';
 
 /** One mark on the observed-minus-calculated strip. */
 export interface StripPoint {
@@ -33,6 +35,11 @@ export const FLAG_SHAPES: Record<FlagCode, Shape> = {
   clock_gap: 'cross',
   cut_short: 'ring',
   chatter: 'cross',
+  pause: 'square',
+  off_centre: 'triangle',
+  drift: 'plus',
+  round_numbers: 'ring',
+  implausible: 'star',
 };
 
 export function stripPoints(analysis: Analysis): StripPoint[] {
@@ -56,7 +63,8 @@ export function stripPoints(analysis: Analysis): StripPoint[] {
 export function stripFinding(analysis: Analysis): Finding {
   const points = stripPoints(analysis).filter((point) => point.residual_ms !== null);
   if (points.length === 0 || analysis.jitter_s === null) return { key: 'run.strip.nothing', named: {} };
-  const jitter_ms = Math.round(analysis.jitter_s * 1000);
+  const ms = (seconds: number) => Number((1000 * seconds).toFixed(msPlaces(analysis.jitter_s)));
+  const jitter_ms = ms(analysis.jitter_s);
   const flagged = points.filter((point) => point.isFlagOpen).length;
   if (flagged > 0) return { key: 'run.strip.flagged', named: { marks: points.length, jitter_ms, n: flagged } };
   const worst = points.reduce((a, b) => (Math.abs(b.residual_ms!) > Math.abs(a.residual_ms!) ? b : a));
@@ -64,14 +72,26 @@ export function stripFinding(analysis: Analysis): Finding {
   if (Math.abs(worst.residual_ms!) <= OUTSIDE_BAND * analysis.jitter_s * 1000) return { key: 'run.strip.even', named };
   return {
     key: worst.residual_ms! > 0 ? 'run.strip.late' : 'run.strip.early',
-    named: { ...named, mark: worst.mark, off_ms: Math.round(Math.abs(worst.residual_ms!)) },
+    named: { ...named, mark: worst.mark, off_ms: ms(Math.abs(worst.residual_ms!) / 1000) },
   };
 }
 
-/** Half height of the strip, ms: holds every residual and the ±2 s.d. band, with room to spare. */
-export function stripReach_ms(points: StripPoint[], jitter_s: number | null): number {
-  const largest = Math.max(0, ...points.map((point) => Math.abs(point.residual_ms ?? 0)));
-  return 1.15 * Math.max(largest, 2.4 * (jitter_s ?? 0) * 1000, 5);
+/** Where the plain line, which knows of no amplitude, expects each mark against the motion, ms, by mark. */
+export function plainLine_ms(analysis: Analysis): Map<number, number> {
+  return new Map(plainLine(analysis)?.map(({ mark, bend }) => [mark, bend * 1000]));
+}
+
+/** How far the plain line bows away from the motion, ms; null when there is nothing to compare. */
+export function largestBow_ms(bows: Map<number, number>): number | null {
+  return bows.size === 0 ? null : Math.max(...[...bows.values()].map(Math.abs));
+}
+
+/** Half height of the strip, ms: holds every residual, the ±2 s.d. band, and the bow if shown, with room to spare. */
+export function stripReach_ms(points: StripPoint[], jitter_s: number | null, bow_ms = 0): number {
+  const largest = Math.max(bow_ms, ...points.map((point) => Math.abs(point.residual_ms ?? 0)));
+  const band = 2.4 * (jitter_s ?? 0) * 1000;
+  // Hands are never shown wilder than they are; a gate's scatter is a thousand times finer and has a scale of its own.
+  return 1.15 * Math.max(largest, band, msPlaces(jitter_s) === 0 ? 5 : 2 * band);
 }
 
 /** Beyond so many s.d. a mark is worth naming: one good mark in a hundred lies out there. */

@@ -1,11 +1,13 @@
 import type { Brush, Picture } from '@/composables/useChart';
 import type { ChartTheme } from '@/composables/chartTheme';
-import { paintLine, paintMarker } from './paint';
-import { FLAG_SHAPES, stripReach_ms, type StripPoint } from './residualStrip';
+import { paintCurve, paintLine, paintMarker } from './paint';
+import { FLAG_SHAPES, largestBow_ms, stripReach_ms, type StripPoint } from './residualStrip';
 
 interface Strip {
   points: StripPoint[];
   jitter_s: number | null;
+  /** Where the plain line expects each mark, ms, by mark; empty draws no line. */
+  bows_ms: Map<number, number>;
   /** Place in `points` of the mark the reader stands on. */
   chosen: number | null;
 }
@@ -20,7 +22,7 @@ export function stripPicture(
   size: { width: number },
   theme: ChartTheme,
 ): Picture {
-  const reach = stripReach_ms(strip.points, strip.jitter_s);
+  const reach = stripReach_ms(strip.points, strip.jitter_s, largestBow_ms(strip.bows_ms) ?? 0);
   const swings = strip.points.map((point) => point.swing);
   const last = Math.max(1, ...swings);
   const type = { tick_px: theme.rem * 0.8, name_px: theme.rem * 0.8 };
@@ -45,6 +47,7 @@ export function stripPicture(
     },
     paint: (brush) => {
       paintBand(brush, strip.jitter_s);
+      paintBow(brush, strip);
       const radius = Math.min(5, Math.max(2.2, size.width / strip.points.length / 3));
       strip.points.forEach((point, i) => paintPoint(brush, point, radius, i === strip.chosen));
     },
@@ -65,6 +68,16 @@ function paintBand(brush: Brush, jitter_s: number | null): void {
     }
   }
   paintLine(brush, [left, brush.y(0)], [left + width, brush.y(0)], { colour: theme.ink, width_px: 1.5 });
+}
+
+/** The plain line through the marks as the motion sees it: straight against time, bent here. */
+function paintBow(brush: Brush, { points, bows_ms }: Strip): void {
+  const on = points.filter(({ mark }) => bows_ms.has(mark));
+  paintCurve(
+    brush,
+    on.map(({ mark, swing }) => [brush.x(swing), brush.y(bows_ms.get(mark)!)]),
+    { colour: brush.theme.brass, width_px: 2.5, dash_px: [7, 5] },
+  );
 }
 
 function paintPoint(brush: Brush, point: StripPoint, radius: number, isChosen: boolean): void {

@@ -14,7 +14,7 @@ export const missedCount = (flag: Flag) => Math.max(1, Math.round(flag.seen.coun
  * The edit a choice stands for.
  *
  * @param swings  what the person typed, for 'set_swings'
- * @returns       undefined when the flag does not name the mark the edit would need
+ * @returns       undefined when the flag does not name the mark or marks the edit would need
  */
 export function editFor(flag: Flag, choice: Choice, swings?: number): EditChange | undefined {
   switch (choice) {
@@ -22,6 +22,10 @@ export function editFor(flag: Flag, choice: Choice, swings?: number): EditChange
       return flag.mark === null ? undefined : { kind: 'leave_out_mark', mark: flag.mark };
     case 'insert_gap':
       return flag.mark === null ? undefined : { kind: 'insert_gap', before_mark: flag.mark, count: missedCount(flag) };
+    case 'keep_part': {
+      const { from_mark, to_mark } = flag.seen;
+      return from_mark === undefined || to_mark === undefined ? undefined : { kind: 'keep_part', from_mark, to_mark };
+    }
     case 'reread_as_half_swings':
       return { kind: 'reread_as_half_swings' };
     case 'set_swings':

@@ -6,16 +6,18 @@ import {
   type TargetVerdict,
 } from '@shared/analysis/planner/judgePlan';
 import { predictPlan, type Prediction } from '@shared/analysis/planner/predictPlan';
+import type { TimingPlan } from '@shared/analysis/planner/timingPlan';
+import { readAmplitudes } from '@shared/analysis/readAmplitudes';
 import { reducedLength } from '@shared/physics/reducedLength';
 import type { RecordingPlan } from '@/db/localStore';
-import { radians } from '@shared/units/angle';
+import { degrees, radians } from '@shared/units/angle';
 import { planOf, USUAL_FORM, type PlannerForm } from './plannerForm';
 
 /** What a filled-in planner says. `wanted` is what the verdict was asked about. */
 export type PlannerOutcome =
   | { kind: 'unfilled' }
-  | { kind: 'target'; prediction: Prediction | undefined; verdict: TargetVerdict; wanted: number }
-  | { kind: 'effect'; prediction: Prediction | undefined; verdict: EffectVerdict; wanted: number };
+  | { kind: 'target'; plan: TimingPlan; prediction: Prediction | undefined; verdict: TargetVerdict; wanted: number }
+  | { kind: 'effect'; plan: TimingPlan; prediction: Prediction | undefined; verdict: EffectVerdict; wanted: number };
 
 /** Typing goes on while a plan is weighed, which takes a tenth of a second on a slow phone. */
 const QUIET_MS = 150;
@@ -59,10 +61,10 @@ export function usePlanner({ quietMs = QUIET_MS } = {}) {
         length_um: Math.round(length.value * 1e6),
         length_u_um: Math.round(length.u * 1e6),
       });
-    const start = amplitudes[0]?.as_read;
-    if (start?.form === 'angle') form.amplitude_mdeg = start.mdeg;
-    if (start?.form === 'sideways' && start.sideways_um < start.length_um) {
-      form.amplitude_mdeg = Math.round((Math.asin(start.sideways_um / start.length_um) * 180_000) / Math.PI);
+    const [start] = readAmplitudes(amplitudes);
+    if (start) {
+      form.amplitude_mdeg = Math.round(1000 * degrees(start.amplitude));
+      form.amplitude_u_mdeg = Math.round(1000 * degrees(start.u));
     }
     form.mode = swings_per_mark === 0.5 ? 'pass' : swings_per_mark === 1 ? 'swing' : 'every';
     if (swings_per_mark > 1) form.every = swings_per_mark;
@@ -81,6 +83,7 @@ function weigh(form: PlannerForm): PlannerOutcome {
     const otherAmplitude = radians(form.other_mdeg / 1000);
     return {
       kind: 'effect',
+      plan,
       prediction,
       verdict: judgeAmplitudeEffect(plan, { otherAmplitude }),
       wanted: otherAmplitude,
@@ -89,5 +92,5 @@ function weigh(form: PlannerForm): PlannerOutcome {
   if (form.target_percent === null) return { kind: 'unfilled' };
   const wanted = form.target_percent / 100;
   const of = form.goal === 'gravity' ? 'gravity' : 'smallPeriod';
-  return { kind: 'target', prediction, verdict: judgeTarget(plan, { of, relative: wanted }), wanted };
+  return { kind: 'target', plan, prediction, verdict: judgeTarget(plan, { of, relative: wanted }), wanted };
 }

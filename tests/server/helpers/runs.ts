@@ -52,7 +52,7 @@ export function runItem(run: RawRun = rawRun(), place: Partial<RunItem> = {}): R
   return { type: 'run', id: run.id, digest: digestOf(raw), raw, class_id: null, bench: null, ...place };
 }
 
-export function editItem(run_id: string, change: EditChange, made_seq = 1): EditItem {
+export function editItem(run_id: string, change: EditChange, made_seq = 1, reason = ''): EditItem {
   const id = randomUUID();
   const raw = canonicalText({
     format: EDIT_FORMAT,
@@ -61,7 +61,7 @@ export function editItem(run_id: string, change: EditChange, made_seq = 1): Edit
     run_id,
     made_seq,
     made_wall_ms: 1_760_000_100_000,
-    reason: '',
+    reason,
     change,
   });
   return { type: 'edit', id, run_id, digest: digestOf(raw), raw };

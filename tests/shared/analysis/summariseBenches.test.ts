@@ -1,11 +1,11 @@
 import { expect, it } from 'vitest';
 import { summariseBenches, type BenchDot } from '@shared/analysis/summariseBenches';
 
-const dot = (bench: number, period_s: number, u_s = 0.004): BenchDot => ({
+const dot = (bench: number, period_s: number, expanded_u_s = 0.008): BenchDot => ({
   id: `${bench}-${period_s}`,
   bench,
   period_s,
-  u_s,
+  expanded_u_s,
   length_m: 1,
   open_flags: 0,
 });
@@ -37,7 +37,7 @@ it('a bench that counted half swings stands beyond the picture and is not left o
 });
 
 it('the range holds every bar of a class that agrees', () => {
-  const dots = [2.0, 2.004, 2.006, 2.009].map((period, i) => dot(i + 1, period, 0.003));
+  const dots = [2.0, 2.004, 2.006, 2.009].map((period, i) => dot(i + 1, period, 0.006));
   const { range_s, beyond } = summariseBenches(dots)!;
   expect(beyond.size).toBe(0);
   expect(range_s[0]).toBeLessThan(2.0 - 0.006);

@@ -26,7 +26,7 @@ const faultsMended: Record<string, EditChange[]> = {
   'keyed-miscount': [{ kind: 'set_swings', swings: 19 }],
 };
 
-describe('motion-1', () => {
+describe('motion-2', () => {
   test.each([
     { id: 'simple-5', within: 0.002 },
     { id: 'simple-30', within: 0.002 },
@@ -109,12 +109,15 @@ describe('flags', () => {
     'rod-140-clean',
     'rod-165-clean',
     'gate-45',
-    'gate-off',
     'keyed-20',
     'dry-40',
     'every-5th',
   ])('raises none on %s', (id) => {
     expect(flagged(id)).toEqual([]);
+  });
+
+  test('tells that the gate of gate-off stands beside the lowest point, as its truth has it by 3°, and nothing else', () => {
+    expect(flagged('gate-off')).toEqual([{ code: 'off_centre', mark: null }]);
   });
 
   test('finds the two missed and the one struck twice, and nothing else', () => {

@@ -1,10 +1,9 @@
 import { describe, expect, test } from 'vitest';
 import * as corrections from '@shared/physics/corrections';
-import { gravityFrom, smallPeriodFrom } from '@shared/physics/gravity';
+import { smallPeriodFrom } from '@shared/physics/gravity';
 import reference from '../../reference/corrections.json';
 
 /** corrections.json: 1 m to the centre of a steel ball of 15 mm radius, string 0.3 g, g = 9.80665. */
-const steel = { length: 1, radius: 0.015, bobDensity: 7850, gravity: 9.80665 };
 const mass = Number(reference.bob_mass_kg);
 const smallPeriod = smallPeriodFrom(1, 9.80665);
 const ball = { radius: 0.015, bobDensity: 7850, smallPeriod };
@@ -12,7 +11,6 @@ const wanted = (key: keyof typeof reference.dT_over_T) => Number(reference.dT_ov
 
 describe('each correction of the standard example has its size and its sign', () => {
   test.each([
-    ['finite_bob', corrections.finiteBob(0.015, 1), 1],
     ['string_mass', corrections.stringMass(0.0003, mass), -1],
     ['buoyancy', corrections.buoyancy(7850), 1],
     ['added_mass_stokes', corrections.addedMass(ball), 1],
@@ -34,40 +32,14 @@ describe('each correction of the standard example has its size and its sign', ()
   });
 });
 
-describe('what is left out falsifies g', () => {
-  test.each([
-    ['finite_bob', -1],
-    ['buoyancy', -1],
-    ['added_mass', -1],
-    ['yielding_support', -1],
-    ['string_mass', 1],
-  ] as const)('%s leaves g = 4π²L/T² off by its line, sign %i', (term, sign) => {
-    const lines = corrections.smallCorrections({ ...steel, stringMass: 0.0003, supportStiffness: 1e4 });
-    const line = lines.find((one) => one.term === term)!;
-    const period = smallPeriod * (1 + line.period);
-    expect(gravityFrom(period, 1) / 9.80665 - 1).toBeCloseTo(line.gravity, 13);
-    expect(Math.sign(line.gravity)).toBe(sign);
-    expect(line.gravity / line.period).toBeCloseTo(-2, 2);
-  });
-});
-
 test('light bobs are carried by the air far more than steel', () => {
   // ρ/2ρbob: wood of 600 kg/m³ 1.0e-3, hollow plastic ball of 84 kg/m³ 7e-3.
   expect(corrections.buoyancy(600)).toBeCloseTo(1.0e-3, 5);
   expect(corrections.buoyancy(84)).toBeCloseTo(7.2e-3, 4);
 });
 
-test('the list names what is known, largest first', () => {
-  expect(corrections.smallCorrections(steel).map((line) => line.term)).toEqual([
-    'buoyancy',
-    'added_mass',
-    'finite_bob',
-  ]);
-});
-
 test('arguments out of range are named', () => {
   expect(() => corrections.buoyancy(1)).toThrow(/bobDensity is 1 kg/);
-  expect(() => corrections.finiteBob(0.1, 0)).toThrow(/length is 0/);
   expect(() => corrections.stringMass(-1, 1)).toThrow(/stringMass is -1/);
   expect(() => corrections.yieldingSupport(1, 0, 1, 9.8)).toThrow(/stiffness is 0/);
 });

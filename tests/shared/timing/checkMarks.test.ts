@@ -1,8 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import { analyseRun } from '@shared/analysis/analyseRun';
 import type { EditChange } from '@shared/schemas/edit';
-import type { RawRun } from '@shared/schemas/run';
-import { noise } from '../../factories/noise';
+import { flagsOf as flags, jittered, namesOf as named } from '../../factories/flagged';
 import {
   angleReading,
   evenTimes,
@@ -10,20 +8,9 @@ import {
   rawKeyedRun,
   rawSplitsRun,
   rawTapRun,
-  sealed,
   stringRig,
 } from '../../factories/rawRuns';
 
-function flags(run: RawRun, ...changes: EditChange[]) {
-  return analyseRun({ run: sealed(run), edits: rawEdits(run, ...changes).map(sealed) }).flags;
-}
-const named = (run: RawRun, ...changes: EditChange[]) =>
-  flags(run, ...changes).map(({ code, mark }) => (mark === null ? code : `${code} ${mark}`));
-
-function jittered(n: number, lap: number, jitter: number, seed = 1): number[] {
-  const { normal } = noise(seed);
-  return evenTimes(n, lap).map((t) => t + jitter * normal());
-}
 const without = (times: number[], ...lost: number[]) => times.filter((_, i) => !lost.includes(i));
 
 describe('double and missed', () => {
@@ -153,14 +140,14 @@ describe('the count', () => {
     }
   });
 
-  test('a length of quite another size is not taken for a miscount', () => {
+  test('a length of quite another size is not taken for a miscount but told as what fits no pendulum', () => {
     const rig = stringRig({ length_readings: [{ to: 'centre', um: 500_000 }] });
-    expect(named(rawKeyedRun({ counted_to: 20, total: 40.19, rig, amplitudes }))).toEqual([]);
+    expect(named(rawKeyedRun({ counted_to: 20, total: 40.19, rig, amplitudes }))).toEqual(['implausible']);
   });
 
   test('is not judged where the program counted: splits and taps are never count_from_one', () => {
     const times = jittered(20, 2.0064 * (20 / 19), 0.01);
-    expect(named(rawSplitsRun({ times, rig: stringRig(), amplitudes }))).toEqual([]);
+    expect(named(rawSplitsRun({ times, rig: stringRig(), amplitudes }))).toEqual(['implausible']);
   });
 });
 

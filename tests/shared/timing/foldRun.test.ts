@@ -53,6 +53,18 @@ describe('foldRun', () => {
     expect([isOut([out]), isOut([out, withdrawal]), isOut([out, withdrawal, again])]).toEqual([true, false, true]);
   });
 
+  test('a run set aside says why until that is withdrawn, and keeps its marks', () => {
+    const run = rawTapRun({ times: [0, 2, 4] });
+    const aside = rawEdit(run, { kind: 'set_aside' }, { id: uuid(21), reason: 'bob hit the stand' });
+    const back = rawEdit(run, { kind: 'withdraw', edit_id: uuid(21) }, { id: uuid(22) });
+    expect(foldRun(run, [aside])).toMatchObject({
+      setAside: { editId: uuid(21), reason: 'bob hit the stand' },
+      swings: 2,
+    });
+    expect(foldRun(run, [aside, back]).setAside).toBeNull();
+    expect(foldRun(run, []).setAside).toBeNull();
+  });
+
   test('passes over edits of another run', () => {
     const run = rawTapRun({ times: [0, 2, 4] });
     expect(foldRun(run, [rawEdit({ id: uuid(99) }, leaveOut(1))]).marks[1]!.leftOut).toBe(false);

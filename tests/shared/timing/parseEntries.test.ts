@@ -35,6 +35,22 @@ describe('parseSplits', () => {
     ]);
   });
 
+  test.each([
+    ['2,01 8.1', '2,01'],
+    ['2.01\n4,03\n6.02', '4,03'],
+    ['1,234.5', '1,234.5'],
+    ['2.01,4.03,6', '2.01,4.03,6'],
+  ])('tells mixed decimal marks in %j and makes no reading of %j', (text, seen) => {
+    const { problems, mark_us } = parseSplits(text);
+    expect(problems.map(({ code, seen }) => [code, seen])).toContainEqual(['mixed_marks', seen]);
+    expect(mark_us).not.toContain(1_000_000);
+    expect(mark_us).not.toContain(2_000_000);
+  });
+
+  test('the first press may stand before commas too', () => {
+    expect(parseSplits('0,2.01,4.03')).toMatchObject({ mark_us: [0, 2_010_000, 4_030_000], problems: [] });
+  });
+
   test('says when there are too few or too many', () => {
     expect(parseSplits('').problems).toMatchObject([{ code: 'too_few' }]);
     const many = Array.from({ length: 2_500 }, (_, i) => String(i + 1)).join('\n');

@@ -2,7 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { steadiness } from '@shared/timing/steadiness';
 
 /** Marks every 2 s, each off by the next of these, ms. */
-const tapped = (off_ms: number[], lap_s = 2) => off_ms.map((off, i) => Math.round((10 + i * lap_s) * 1e6 + off * 1000));
+const tapped = (off_ms: number[], lap_s = 2) =>
+  off_ms.map((off, i) => ({ at_us: Math.round((10 + i * lap_s) * 1e6 + off * 1000), missed: 0 }));
 /** Twelve draws like those of a normal law with standard deviation 1. */
 const DRAWS = [0.9, 0.3, -1.4, -0.6, 0.8, 1.3, -0.2, -0.9, -1.1, 0.4, 1.6, -0.5];
 const swing = (ms: number, n = 12) => Array.from({ length: n }, (_, i) => ms * DRAWS[i % 12]!);
@@ -23,9 +24,21 @@ describe('steadiness', () => {
     expect(steadiness(tapped(swing(60), 0.7), 1)).toBe(steadiness(tapped(swing(60), 3), 1));
   });
 
-  it('does not mind one missed pass', () => {
-    const marks = tapped(swing(20, 14));
-    expect(steadiness(marks.toSpliced(9, 1), 1)).toBe('even');
+  it('a lap of 4 s among laps of 2 s is uneven, and forgotten three laps later', () => {
+    const marks = tapped(swing(20, 14)).toSpliced(9, 1);
+    expect(steadiness(marks.slice(0, 9), 1)).toBe('even');
+    expect(steadiness(marks.slice(0, 10), 1)).toBe('uneven');
+    expect(steadiness(marks.slice(0, 12), 1)).toBe('uneven');
+    expect(steadiness(marks.slice(0, 13), 1)).toBe('even');
+  });
+
+  it('does not mind a missed pass that was said to be missed', () => {
+    const marks = tapped(swing(20, 14)).toSpliced(9, 1);
+    marks[9]!.missed = 1;
+    expect(steadiness(marks.slice(0, 10), 1)).toBe('even');
+    const both = tapped(swing(20, 14), 1).toSpliced(9, 1);
+    both[9]!.missed = 1;
+    expect(steadiness(both.slice(0, 10), 0.5)).toBe('even');
   });
 
   it('does not hold a mark beside the centre against the tapper', () => {

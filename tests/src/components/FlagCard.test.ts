@@ -27,6 +27,13 @@ const PLANTED: Record<FlagCode, Partial<RawRun>> = {
   },
   cut_short: { capture: tapped({ ended: 'cut_short' }) },
   chatter: { capture: brokenBlock() },
+  pause: { capture: tapped({ mark_us: mark_us.map((us, i) => (i < 9 ? us : us + 800_000)) }) },
+  off_centre: {
+    capture: tapped({ swings_per_mark: 0.5, mark_us: mark_us.map((us, i) => us / 2 + (i % 2) * 120_000) }),
+  },
+  drift: { capture: drifting(), amplitudes: tenDegrees },
+  round_numbers: { capture: keyed({ total_us: 40_000_000 }) },
+  implausible: { rig: metreRig, capture: keyed({ total_us: 60_000_000 }), amplitudes: tenDegrees },
 };
 
 /** A gate run whose sixth block is broken in two for a tenth of a millisecond. */
@@ -36,6 +43,13 @@ function brokenBlock(): RawRun['capture'] {
   const middle = Math.round((on + off) / 2);
   const block_us = whole.block_us.toSpliced(5, 1, [on, middle - 50], [middle + 50, off]);
   return { ...whole, block_us };
+}
+
+/** A gate run in which T grows by a hundredth. */
+function drifting(): RawRun['capture'] {
+  const even = gated();
+  const later = (us: number) => Math.round(us + (0.005 * us * us) / even.block_us.at(-1)![1]);
+  return { ...even, block_us: even.block_us.map(([on, off]) => [later(on), later(off)]) };
 }
 
 function found(code: FlagCode) {
@@ -83,5 +97,17 @@ it('whoever may not edit sees the flag and no choices', () => {
   const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: false });
   expect(wrapper.text()).toContain('Double tap');
   expect(wrapper.findAll('button')).toEqual([]);
+  wrapper.unmount();
+});
+
+it.each([
+  ['one', 'the “one” said at the first pass taken off already'],
+  ['zero', 'with “zero” said at the first pass'],
+  ['not_sure', 'Was “one” said at the first pass?'],
+] as const)('a count that does not fit does not ask again what was answered with %s', (saidFirst, words) => {
+  const { analysis, flag } = found('count_from_one');
+  const { wrapper } = mountApp(FlagCard, { flag, marks: analysis.marks, mayEdit: true, saidFirst });
+  expect(wrapper.text()).toContain(words);
+  if (saidFirst !== 'not_sure') expect(wrapper.text()).not.toContain('Was “one”');
   wrapper.unmount();
 });

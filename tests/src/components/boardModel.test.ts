@@ -6,7 +6,7 @@ import { boardScale } from '@/composables/useBoardScale';
 const point = (bench: number, parts: Partial<BoardPoint> = {}): BoardPoint => ({
   run_id: `018f0000-0000-7000-8000-0000000000${String(bench).padStart(2, '0')}`,
   bench,
-  small_period_s: { value: 2 + bench / 1000, u: 0.004 },
+  small_period_s: { value: 2 + bench / 1000, u: 0.004, expanded_u: 2 * 0.004 },
   length_m: 1,
   open_flags: 0,
   ...parts,
@@ -35,7 +35,9 @@ it('the headline has two digits of the spread', () => {
 });
 
 it('one bench alone takes the places of its own uncertainty', () => {
-  expect(periodPlaces(boardModel([point(1, { small_period_s: { value: 2.01, u: 0.03 } })]).summary!)).toBe(3);
+  expect(
+    periodPlaces(boardModel([point(1, { small_period_s: { value: 2.01, u: 0.03, expanded_u: 2 * 0.03 } })]).summary!),
+  ).toBe(3);
 });
 
 it('axis numbers stay at a fortieth of the picture on 4:3 and readable on a phone', () => {

@@ -6,7 +6,7 @@ import { useBoardView } from '@/composables/useBoardView';
 const point = (n: number): BoardPoint => ({
   run_id: `018f0000-0000-7000-8000-00000000000${n}`,
   bench: n,
-  small_period_s: { value: 2, u: 0.01 },
+  small_period_s: { value: 2, u: 0.01, expanded_u: 2 * 0.01 },
   length_m: 1,
   open_flags: 0,
 });

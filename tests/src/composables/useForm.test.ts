@@ -43,6 +43,13 @@ it('sends once, however often it is pressed', async () => {
   expect(form.isSending.value).toBe(false);
 });
 
+it('makes a sentence of what the server says in the middle of one', async () => {
+  const said = [{ path: 'nickname', message: 'a nickname or roster number is needed' }];
+  const form = formWith(() => Promise.reject(new ApiError('refused', 422, 'bad_request', 'Look again.', said)));
+  await form.submit();
+  expect(form.errors.value.nickname).toBe('A nickname or roster number is needed.');
+});
+
 it('puts the server’s words beside the field they are about', async () => {
   const said = [{ path: 'nickname', message: 'Bench 1 has a Bob already.' }];
   const form = formWith(() => Promise.reject(new ApiError('refused', 409, 'name_taken', 'Taken.', said)));

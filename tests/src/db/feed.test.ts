@@ -7,7 +7,7 @@ import { addEdit, addRun } from '@/db/runs';
 import { canonicalText, digestOf } from '@shared/schemas/canonical';
 import type { RawRun } from '@shared/schemas/run';
 import type { FeedItem } from '@shared/schemas/sync';
-import { EPOCH, feedAnswer, feedRun, OTHER_EPOCH, rawEdit, rawRun, stored, turnedDown } from '../support/samples';
+import { EPOCH, feedPage, feedRun, OTHER_EPOCH, rawEdit, rawRun, stored, turnedDown } from '../support/samples';
 
 type RunItem = Extract<FeedItem, { type: 'run' }>;
 const NOWHERE = { class_id: null, bench: null };
@@ -20,7 +20,7 @@ const everything = async (store: LocalStore) => ({
 describe('applyFeed', () => {
   it('applied twice leaves the store as once', async () => {
     const store = freshStore();
-    const answer = feedAnswer([feedRun(rawRun()), feedRun(rawRun())], 12);
+    const answer = feedPage([feedRun(rawRun()), feedRun(rawRun())], 12);
     await applyFeed(store, answer);
     const once = await everything(store);
     await applyFeed(store, answer);
@@ -36,7 +36,7 @@ describe('applyFeed', () => {
   ])('an item whose text %s is passed over, and the rest and the cursor are kept', async (_why, spoil) => {
     const store = freshStore();
     const good = feedRun(rawRun());
-    await applyFeed(store, feedAnswer([spoil(feedRun(rawRun())), good], 9));
+    await applyFeed(store, feedPage([spoil(feedRun(rawRun())), good], 9));
     expect(await store.runs.toCollection().primaryKeys()).toEqual([good.id]);
     expect(await feedCursor(store)).toBe(9);
   });
@@ -46,14 +46,14 @@ describe('applyFeed', () => {
     const row = await addRun(store, rawRun(), NOWHERE);
     const other = canonicalText({ ...rawRun({ note: 'other' }), id: row.id });
     const item = { ...feedRun(rawRun()), id: row.id, digest: row.digest };
-    await applyFeed(store, feedAnswer([{ ...item, raw: other }], 3));
+    await applyFeed(store, feedPage([{ ...item, raw: other }], 3));
     expect(await store.runs.get(row.id)).toEqual(row);
   });
 
   it('a run in a format of later is kept as it is, for a page that can read it', async () => {
     const store = freshStore();
     const later = feedRun({ ...rawRun(), version: 2, made: undefined } as unknown as RawRun);
-    await applyFeed(store, feedAnswer([later], 3));
+    await applyFeed(store, feedPage([later], 3));
     expect(await store.runs.get(later.id)).toMatchObject({
       raw: later.raw,
       made_wall_ms: later.receipt.received_wall_ms,
@@ -64,7 +64,7 @@ describe('applyFeed', () => {
     const store = freshStore();
     const run = rawRun();
     const row = await addRun(store, run, NOWHERE);
-    await applyFeed(store, feedAnswer([feedRun(run)], 3));
+    await applyFeed(store, feedPage([feedRun(run)], 3));
     expect(await store.runs.get(run.id)).toMatchObject({
       origin: 'mine',
       state: 'received',
@@ -79,8 +79,32 @@ describe('applyFeed', () => {
     const store = freshStore();
     const run = rawRun();
     const row = await addRun(store, run, NOWHERE);
-    await applyFeed(store, feedAnswer([feedRun({ ...run, note: 'other' })], 3));
+    await applyFeed(store, feedPage([feedRun({ ...run, note: 'other' })], 3));
     expect(await store.runs.get(run.id)).toEqual(row);
+  });
+});
+
+describe('what a version of the app does not understand', () => {
+  const old = (not_understood: number[]) => ({ reader: 'the version before', not_understood });
+
+  it('sets the cursor back to the first of it at the first page another version reads, once', async () => {
+    const store = freshStore();
+    await applyFeed(store, feedPage([], 20, old([14, 17])));
+    await applyFeed(store, feedPage([], 30, old([25])));
+    expect(await feedCursor(store)).toBe(30);
+    await applyFeed(store, feedPage([], 31));
+    expect(await feedCursor(store)).toBe(13);
+    await applyFeed(store, feedPage([feedRun(rawRun())], 31));
+    await applyFeed(store, feedPage([], 32));
+    expect(await feedCursor(store)).toBe(32);
+  });
+
+  it('is forgotten with the server’s old epoch, as the feed starts over anyway', async () => {
+    const store = freshStore();
+    await applyFeed(store, feedPage([], 20, old([14])));
+    await applyFeed(store, feedPage([], 30, { server_epoch: OTHER_EPOCH }));
+    await applyFeed(store, feedPage([], 30, { server_epoch: OTHER_EPOCH }));
+    expect(await feedCursor(store)).toBe(30);
   });
 });
 
@@ -88,7 +112,7 @@ describe('a new epoch of the server', () => {
   it('puts what was received from here back in the queue and starts the feed over', async () => {
     const store = freshStore();
     const row = await addRun(store, rawRun(), NOWHERE);
-    await applyFeed(store, feedAnswer([feedRun(rawRun())], 30));
+    await applyFeed(store, feedPage([feedRun(rawRun())], 30));
     await applyVerdicts(store, [stored({ type: 'run', id: row.id, digest: row.digest })]);
 
     expect(await noteEpoch(store, OTHER_EPOCH)).toBe(true);

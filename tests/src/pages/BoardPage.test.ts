@@ -10,7 +10,8 @@ import { eventually } from '../../support/eventually';
 const point = (bench: number, value: number) => ({
   run_id: uuidv4(),
   bench,
-  small_period_s: { value, u: 0.003 },
+  // Twelve degrees of freedom or so: not twice u.
+  small_period_s: { value, u: 0.003, expanded_u: 0.0065 },
   length_m: 1,
   open_flags: 0,
 });
@@ -80,10 +81,31 @@ it('B blanks, T shows the table, F freezes, and a key with Ctrl is the browser�
   expect(wrapper.text()).toContain('Frozen');
 });
 
+it('takes a run off that was set aside, for good', async () => {
+  const [stays, goes] = [point(1, 2.0), point(2, 2.01)];
+  const aside = { run_id: goes.run_id, bench: 2, small_period_s: null, length_m: null, open_flags: 0, set_aside: true };
+  const pass = uuidv4();
+  const open = async (board: Wire) => {
+    plugIn((path, init) => (path.includes('/board') ? board(path, init) : json({ me: null })));
+    const { wrapper } = await mountPage(BoardPage, { name: 'board', params: { pass } });
+    opened.push(wrapper);
+    return wrapper;
+  };
+  const wrapper = await open((path) => json(answer(path.endsWith('after=0') ? [stays, goes] : [aside])));
+  await eventually(() => expect(wrapper.text()).toContain('2 runs'));
+  await eventually(() => expect(wrapper.text()).toContain('One run'));
+  wrapper.unmount();
+  const offline = await open(() => {
+    throw new TypeError('no network');
+  });
+  await eventually(() => expect(offline.text()).toContain('Showing'));
+  expect(offline.text()).toContain('One run');
+});
+
 it('names nobody', async () => {
   const wrapper = await openBoard(() => json(answer([point(4, 2.0)])));
   await eventually(() => expect(wrapper.text()).toContain('Updated'));
   await wrapper.find('main').trigger('keydown', { key: 't' });
   const cells = wrapper.findAll('.board-table tbody td, .board-table tbody th').map((cell) => cell.text());
-  expect(cells).toEqual(['4', '2.0000', '0.0060', '1.000', '–']);
+  expect(cells).toEqual(['4', '2.0000', '0.0065', '1.000', '–']);
 });

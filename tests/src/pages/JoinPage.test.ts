@@ -78,6 +78,34 @@ it('a joining sent again because its answer was lost has the same id, another ni
   expect(other).not.toBe(first);
 });
 
+it('a joining whose answer was lost is the same joining after a reload, and another one once it was answered', async () => {
+  let isLost = true;
+  sent = plugIn((path) => {
+    if (path === '/api/classes/look-up') return json(card);
+    if (path === '/api/join' && isLost) throw new TypeError('no network');
+    return json(path === '/api/join' ? { me: student(7), pin: '204611' } : { me: null });
+  });
+  const join = async () => {
+    const page = await mountAt('/join/K4R7MP');
+    await eventually(() => expect(page.text()).toContain('plumb'));
+    await page.get('input[value="7"]').setValue();
+    await page.get('input[maxlength="24"]').setValue('Lost Kite');
+    const before = sentTo('/api/join').length;
+    await page.get('form').trigger('submit');
+    await eventually(() => expect(sentTo('/api/join')).toHaveLength(before + 1));
+    await eventually(() => expect(page.text()).toContain(isLost ? 'not reached' : 'Write this PIN down'));
+    await flushPromises();
+    page.unmount();
+  };
+  await join();
+  isLost = false;
+  await join();
+  await join();
+  const [lost, again, other] = sentTo('/api/join').map(({ body }) => (body as { join_id: string }).join_id);
+  expect(again).toBe(lost);
+  expect(other).not.toBe(lost);
+});
+
 it('the PIN is shown though the phone cannot keep who joined', async () => {
   const page = await mountAt('/join/K4R7MP');
   await eventually(() => expect(page.text()).toContain('plumb'));

@@ -3,7 +3,7 @@ import { IDBFactory } from 'fake-indexeddb';
 import { Dexie } from 'dexie';
 import { createPinia, setActivePinia } from 'pinia';
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
-import { JOIN_ID, rawRun, student } from '../support/samples';
+import { rawRun, student } from '../support/samples';
 import { json, page, plugIn, said, type Wire } from '../support/network';
 
 const ann = student(1);
@@ -34,7 +34,7 @@ const joinAs =
     return json({ me });
   };
 const place = { code: 'K4R7MP', bench: 1, nickname: 'Bob 1' };
-const body = { ...place, join_id: JOIN_ID };
+const body = place;
 
 beforeEach(() => {
   const factory = new IDBFactory();

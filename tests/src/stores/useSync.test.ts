@@ -5,7 +5,7 @@ import { afterEach, beforeEach, expect, it, vi } from 'vitest';
 import type { SyncItem } from '@shared/schemas/sync';
 import { locksOfOneBrowser } from '../support/locksOfOneBrowser';
 import { json, plugIn, type SentRequest, type Wire } from '../support/network';
-import { feedAnswer, JOIN_ID, rawRun, stored, student, syncAnswer } from '../support/samples';
+import { feedAnswer, rawRun, stored, student, syncAnswer, turnedDown } from '../support/samples';
 import { eventually } from '../../support/eventually';
 
 const ann = student(1);
@@ -58,7 +58,7 @@ it('a run goes out by itself as it is kept, and the words follow it', async () =
   plugIn(server);
   const { session, sync, runs } = await loadPage();
   expect(sync.state).toBe('guest');
-  await session.join({ join_id: JOIN_ID, code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
+  await session.join({ code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
   const row = await runs.addRun(rawRun());
   await eventually(() => expect(runs.entry(row.id)!.row.state).toBe('received'));
   await eventually(() => expect(sync.state).toBe('quiet'));
@@ -67,7 +67,7 @@ it('a run goes out by itself as it is kept, and the words follow it', async () =
 it('a run kept with no network is counted after a reload, and goes out when the network is back', async () => {
   plugIn(server);
   const first = await loadPage();
-  await first.session.join({ join_id: JOIN_ID, code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
+  await first.session.join({ code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
   plugIn(offline);
   await first.runs.addRun(rawRun());
   closeAll();
@@ -82,9 +82,26 @@ it('a run kept with no network is counted after a reload, and goes out when the 
   expect(posts(sent)).toHaveLength(1);
 });
 
+it('with a run not taken it is not said that everything is in, until that one is', async () => {
+  let takes = false;
+  plugIn((path, init) => {
+    if (path !== '/api/sync') return server(path, init);
+    const { items } = JSON.parse(String(init.body)) as { items: SyncItem[] };
+    return json(syncAnswer(items.map((item) => (takes ? stored(item) : turnedDown('refused', item)))));
+  });
+  const { session, sync, runs } = await loadPage();
+  await session.join({ code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
+  const row = await runs.addRun(rawRun());
+  await eventually(() => expect(sync.state).toBe('not_taken'));
+  expect(sync.refused).toBe(1);
+  takes = true;
+  await sync.tryAgain('run', row.id);
+  await eventually(() => expect(sync.state).toBe('quiet'));
+});
+
 it('nothing is said to be received before it was counted', async () => {
   plugIn(server);
-  await (await loadPage()).session.join({ join_id: JOIN_ID, code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
+  await (await loadPage()).session.join({ code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
   plugIn(offline);
   const { sync } = await loadPage();
   expect(sync.state).toBe('starting');
@@ -93,7 +110,7 @@ it('nothing is said to be received before it was counted', async () => {
 it('R7: with the sign-in run out a run is kept, not sent, and goes out after coming back', async () => {
   plugIn(server);
   const first = await loadPage();
-  await first.session.join({ join_id: JOIN_ID, code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
+  await first.session.join({ code: 'K4R7MP', bench: 1, nickname: 'Bob 1' }, true);
 
   const sent = plugIn((path, init) => (path === '/api/me' ? json({ me: null }) : server(path, init)));
   const { session, sync, runs } = await loadPage();

@@ -10,7 +10,6 @@ import type { FeedItem, SyncItem, Verdict } from '@shared/schemas/sync';
 export const EPOCH = '018f0000-0000-7000-8000-00000000e001';
 export const OTHER_EPOCH = '018f0000-0000-7000-8000-00000000e002';
 export const DEVICE = '018f0000-0000-4000-8000-00000000d001';
-export const JOIN_ID = '018f0000-0000-7000-8000-00000000f001';
 export const CLASS_ID = '018f0000-0000-7000-8000-00000000c001';
 
 export const student = (n: number): Me => ({
@@ -86,6 +85,14 @@ export const feedAnswer = (items: FeedItem[], cursor: number, over: object = {})
   cursor,
   more: false,
   items,
+  ...over,
+});
+
+/** A page of the feed as it stands once it was read. */
+export const feedPage = (items: FeedItem[], cursor: number, over: object = {}) => ({
+  ...feedAnswer(items, cursor),
+  reader: 'this version',
+  not_understood: [] as number[],
   ...over,
 });
 

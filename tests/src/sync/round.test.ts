@@ -310,6 +310,23 @@ describe('the feed', () => {
     expect(await store.meta.get('cursor')).toMatchObject({ content: 8 });
   });
 
+  it('is read again from where an item was not understood, after the app was updated', async () => {
+    const item = { ...feedRun(rawRun()), seq: 5, colour: 'brass' };
+    plugIn(() => json({ ...feedAnswer([], 8), items: [item, { type: 'song', seq: 7 }] }));
+    await round();
+    const kept = (await store.meta.get('not_understood'))!.content as object;
+    expect(kept).toMatchObject({ before: 4 });
+    await store.meta.put({ key: 'not_understood', content: { ...kept, reader: 'the version before' } });
+    const sent = plugIn(() => json(feedAnswer([], 9)));
+    await round();
+    await round();
+    expect(sent.map(({ path }) => path)).toEqual([
+      '/api/feed?after=8&limit=200',
+      '/api/feed?after=4&limit=200',
+      '/api/feed?after=9&limit=200',
+    ]);
+  });
+
   it('expects more while a run handed in has no analysis from the server', async () => {
     await addRun(store, rawRun(), NOWHERE);
     plugIn(answering(takesAll));

@@ -2,7 +2,6 @@ import { createRequire } from 'node:module';
 import { describe, expect, test } from 'vitest';
 import { passOf, releaseMotion, stateAt } from '@shared/physics/motion/motion';
 import type { Damping } from '@shared/physics/motion/damping';
-import { sineCosine } from '@shared/physics/motion/sineCosine';
 import { periodRatio } from '@shared/physics/periodRatio';
 import { degrees, radians } from '@shared/units/angle';
 import damped from '../../../reference/damped.json';
@@ -133,12 +132,4 @@ test('passes of an angle off the lowest point lie on the curve, with direction a
     expect(Math.sign(pass.rate)).toBe(turn % 2 === 0 ? -1 : 1);
   }
   expect(passOf(motion, 0, 2)).toBeUndefined();
-});
-
-test('sine and cosine agree with the library’s to 4e-16', () => {
-  for (let x = -700; x < 700; x += 0.037) {
-    const [sine, cosine] = sineCosine(x);
-    expect(Math.abs(sine - Math.sin(x))).toBeLessThan(4e-16);
-    expect(Math.abs(cosine - Math.cos(x))).toBeLessThan(4e-16);
-  }
 });

@@ -63,7 +63,9 @@ describe('AmplitudeForm', () => {
     const { readings, wrapper, field } = form();
     await wrapper.find('input[value="sideways"]').setValue();
     await field('At the start').setValue('17.4');
+    await field('At the start').trigger('blur');
     expect(readings.value).toEqual([]);
+    expect(wrapper.text()).toContain('Give the length, or the angle instead.');
     await field('Pivot to where it was read').setValue('100');
     expect(readings.value).toHaveLength(1);
   });
@@ -72,6 +74,7 @@ describe('AmplitudeForm', () => {
     const { readings, wrapper, field } = form([], { rig });
     await wrapper.find('input[value="sideways"]').setValue();
     await field('At the start').setValue('100');
+    await field('At the start').trigger('blur');
     expect(readings.value).toEqual([]);
     expect(wrapper.text()).toContain('not shorter than the length');
   });
