@@ -39,7 +39,7 @@ const MOST_BETWEEN_MS = 80;
 const DAY = 86_400 * SECOND;
 const phone = fc.constantFrom(0, 0, 1);
 const tab = fc.constantFrom(0, 0, 0, 1);
-const nth = fc.integer({ min: 1, max: 4 });
+const nth = fc.constantFrom(1, 1, 1, 2, 3, 4);
 const part = fc.double({ min: 0.05, max: 0.95, noNaN: true });
 const which = fc.nat({ max: 30 });
 const way = fc.constantFrom(20, 400, 3 * SECOND, 16 * SECOND, 40 * SECOND);
@@ -126,7 +126,7 @@ export const commands: fc.Arbitrary<Command[]> = fc.array(
       weight: 4,
       arbitrary: just<Do<'end_server'>>({
         do: named('end_server'),
-        at: fc.constantFrom('now', ...SERVER_POINTS),
+        at: fc.constantFrom('now', 'before_commit', ...SERVER_POINTS),
         nth,
         down_ms: fc.constantFrom(50, 3 * SECOND, 30 * SECOND),
       }),

@@ -88,7 +88,7 @@ export class SimServer {
       conversations: new Set(),
       isAnalysing: false,
       isDead: false,
-      mayRun: (sql) => !this.isCommitHeld && this.mayRun(sql),
+      mayRun: (sql) => this.mayRun(sql),
       mayHear: (sql) => this.mayHear(sql),
       unwatch: () => undefined,
     };

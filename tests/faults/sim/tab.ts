@@ -1,5 +1,5 @@
 import { Dexie, liveQuery, type DexieOptions } from 'dexie';
-import { IDBKeyRange } from 'fake-indexeddb';
+import { IDBFactory, IDBKeyRange } from 'fake-indexeddb';
 import type { Exchange } from './network';
 import type { Page } from './page';
 import type { Phone } from './phone';
@@ -32,6 +32,9 @@ const FRAME_MS = 16;
 interface Closable {
   close(): void;
 }
+
+// Every store is given its phone's own; a live query only looks whether there is any at all.
+Dexie.dependencies.indexedDB = new IDBFactory();
 
 /** One open page of a phone. Once it is killed nothing it still does reaches anything. */
 export class Tab {
