@@ -30,7 +30,8 @@ export const LOSS_SETS = [[0], [1], [2], [0, 1], [0, 2], [1, 2], [0, 1, 2]] as c
 /**
  * Losses and their uncertainty when it is not known which terms of damping act and none can be negative.
  * Every set of terms is a hypothesis, all equally likely beforehand; a term more has to earn its place,
- * because its prior is spread over what it might have been. The answer is the average over the sets.
+ * because its prior is spread over what it might have been. The answer is the average over the sets that are
+ * not far less likely than the best.
  *
  * @returns undefined when the data are not finite
  * @see Bayesian model averaging: Hoeting, Madigan, Raftery & Volinsky, Stat. Sci. 14, 382 (1999) (from memory)
@@ -39,7 +40,7 @@ export function averageLosses(data: LossEvidence, prior: LossPrior): AveragedLos
   const found = LOSS_SETS.map((set) => withSet(set, data, prior));
   const best = Math.max(...found.map((one) => one?.logEvidence ?? -Infinity));
   if (!Number.isFinite(best)) return undefined;
-  const weights = found.map((one) => (one ? exp(one.logEvidence - best) : 0));
+  const weights = found.map((one) => (one ? withinWindow(exp(one.logEvidence - best)) : 0));
   const total = weights.reduce((sum, w) => sum + w, 0);
   const chances = weights.map((w) => w / total);
   const mean = [0, 1, 2].map((k) => found.reduce((sum, one, m) => sum + (one ? chances[m]! * one.mean[k]! : 0), 0));
@@ -51,6 +52,21 @@ export function averageLosses(data: LossEvidence, prior: LossPrior): AveragedLos
   const between = average((one, i, j) => (one.mean[i]! - mean[i]!) * (one.mean[j]! - mean[j]!));
   return { mean, within, covariance: within.map((row, i) => row.map((v, j) => v + between[i]![j]!)), chances };
 }
+
+/**
+ * Sets far less likely than the best are left out, or a rare one that lies far off would widen every interval: Occam's
+ * window, with a soft edge so that no digit of the data makes a jump.
+ *
+ * @param odds  against the best, in [0, 1]
+ * @see Madigan & Raftery, J. Am. Stat. Assoc. 89, 1535 (1994), who leave out what is below 1/20; at 1/10 evidence
+ *      counts as strong (Jeffreys; both from memory)
+ */
+function withinWindow(odds: number): number {
+  const below = (WINDOW / odds) ** 2;
+  return odds / (1 + below ** 2);
+}
+
+const WINDOW = 1 / 10;
 
 /** Mean and covariance of all three when only those of a set act; the others are 0. */
 function withSet(set: readonly number[], { values, information, gradient }: LossEvidence, prior: LossPrior) {

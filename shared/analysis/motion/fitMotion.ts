@@ -5,7 +5,7 @@ import type { MotionData } from './motionData';
 import type { MotionFit } from './motionFit';
 import { motionSlopes, type Slopes } from './motionSlopes';
 import { losesMuch, lossRates, placesOf, shapeOf } from './motionUnknowns';
-import { LARGEST_AMPLITUDE, moveWithin } from './moveWithin';
+import { alongSlopes, LARGEST_AMPLITUDE, moveWithin } from './moveWithin';
 import { isIntegrable, predictAveraged, predictIntegrated, type MotionEvent, type Questions } from './predictMotion';
 import { setOut } from './setOut';
 import type { MotionStart } from './startMotion';
@@ -21,6 +21,8 @@ const MOST_STEPS = 25;
 const MOST_INTEGRATED_STEPS = 15;
 /** A step this small, in standard uncertainties, is the last. */
 const SETTLED = 1e-3;
+/** A step smaller than this is made along the slopes, which are right to some per cent of it. */
+const ALONG_SLOPES = 0.03;
 /** Data that hold the amplitude at its limit for so many steps are those of no pendulum, and no fit of them settles. */
 const MOST_AT_LIMIT = 3;
 
@@ -78,10 +80,13 @@ export function fitMotion(
     jitters = jittersOf(left, taken, data, options);
     state = linearise({ data, places, values, columns, left, begin, jitters });
     if (!state) return undefined;
-    const moved = moveWithin(values, state.mean, places, predict);
-    if (!moved) return undefined;
     const { mean, covariance } = state;
     const size = Math.max(...mean.map((v, i) => Math.abs(v - values[i]!) / Math.sqrt(covariance[i]![i]!)));
+    const moved =
+      isIntegrated && size < ALONG_SLOPES && mean[places.amplitude]! < LARGEST_AMPLITUDE
+        ? { values: mean, prediction: alongSlopes(prediction, columns, values, mean, places) }
+        : moveWithin(values, mean, places, predict);
+    if (!moved) return undefined;
     ({ values, prediction } = moved);
     atLimit = values[places.amplitude]! < LARGEST_AMPLITUDE ? 0 : atLimit + 1;
     left = leftOver(values, places, prediction, data);

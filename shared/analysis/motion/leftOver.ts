@@ -14,14 +14,15 @@ export interface LeftOver {
 export function leftOver(values: number[], places: Places, prediction: Prediction, data: MotionData): LeftOver {
   const scale = values[places.period]! / TWO_PI;
   const limp = places.limp < 0 ? 0 : values[places.limp]!;
-  return {
-    times: Float64Array.from(
-      data.times,
-      (t, i) => t - values[places.start]! - scale * prediction.times[i]! - (data.isOdd?.[i] ? limp : 0),
-    ),
-    blocked: Float64Array.from(data.gate?.blocked ?? [], (t, i) => t - scale * prediction.blocked[i]!),
-    readings: Float64Array.from(data.readings, ({ amplitude, u }, i) => (amplitude - prediction.amplitudes[i]!) / u),
-  };
+  const start = values[places.start]!;
+  const times = new Float64Array(data.times);
+  for (let i = 0; i < times.length; i += 1)
+    times[i]! -= start + scale * prediction.times[i]! + (data.isOdd?.[i] ? limp : 0);
+  const blocked = new Float64Array(data.gate?.blocked ?? []);
+  for (let i = 0; i < blocked.length; i += 1) blocked[i]! -= scale * prediction.blocked[i]!;
+  const readings = new Float64Array(data.readings.length);
+  data.readings.forEach(({ amplitude, u }, i) => (readings[i] = (amplitude - prediction.amplitudes[i]!) / u));
+  return { times, blocked, readings };
 }
 
 /** −2 log of how likely what is left is, but for a constant, when the marks' jitter is not known beforehand. */

@@ -1,4 +1,5 @@
 import type { Places } from './motionUnknowns';
+import type { Slopes } from './motionSlopes';
 import type { Prediction } from './predictMotion';
 
 /** Steps towards the mean as far as the motion can be followed. */
@@ -21,6 +22,35 @@ export function moveWithin(
     share /= 2;
   }
   return undefined;
+}
+
+/**
+ * A prediction carried along its slopes to values near by, in place of following the motion once more.
+ *
+ * @param slopes  about `values`
+ */
+export function alongSlopes(
+  prediction: Prediction,
+  { times, blocked, amplitudes }: Slopes,
+  values: number[],
+  near: number[],
+  places: Places,
+): Prediction {
+  const moved = {
+    ...prediction,
+    times: prediction.times.slice(),
+    blocked: prediction.blocked.slice(),
+    amplitudes: prediction.amplitudes.slice(),
+  };
+  const scale = values[places.period]! / (2 * Math.PI);
+  for (const place of [places.amplitude, ...places.losses, places.gateAngle, places.flagError]) {
+    if (place < 0) continue;
+    const by = near[place]! - values[place]!;
+    for (let i = 0; i < moved.times.length; i += 1) moved.times[i]! += (by * times[place]![i]!) / scale;
+    for (let i = 0; i < moved.blocked.length; i += 1) moved.blocked[i]! += (by * blocked[place]![i]!) / scale;
+    for (let i = 0; i < moved.amplitudes.length; i += 1) moved.amplitudes[i]! += by * amplitudes[place]![i]!;
+  }
+  return moved;
 }
 
 /** rad. */
