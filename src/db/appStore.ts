@@ -58,6 +58,19 @@ export async function noteSignOutOwed(owed: boolean): Promise<void> {
   else await store.rows.delete('owes_sign_out');
 }
 
+/**
+ * True from asking to sign in until the server was heard: of a broken-off answer the browser may have kept
+ * the cookie of somebody whom no page knows yet.
+ */
+export async function isCookieInDoubt(): Promise<boolean> {
+  return (await read<boolean>('cookie_in_doubt')) ?? false;
+}
+
+export async function noteCookieInDoubt(inDoubt: boolean): Promise<void> {
+  if (inDoubt) await store.rows.put({ key: 'cookie_in_doubt', content: true });
+  else await store.rows.delete('cookie_in_doubt');
+}
+
 export async function savedSettings(): Promise<Record<string, unknown>> {
   return (await read<Record<string, unknown>>('settings')) ?? {};
 }

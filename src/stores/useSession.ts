@@ -3,6 +3,8 @@ import { computed, markRaw, shallowRef } from 'vue';
 import * as api from '@/api/accounts';
 import { ApiError } from '@/api/ApiError';
 import {
+  isCookieInDoubt,
+  noteCookieInDoubt,
   forgetJoinings,
   joiningId,
   noteSignOutOwed,
@@ -85,12 +87,13 @@ export const useSession = defineStore('session', () => {
       me.value = answer.me;
       standing.value = 'confirmed';
     } else standing.value = 'expired';
+    await noteCookieInDoubt(false);
   }
 
   /** True once the server takes this browser for the owner of that store. Call it under the upload lock. */
   async function isOwner(owner: string): Promise<boolean> {
     if (ownerKey(await rememberedMe()) !== owner) return false;
-    if (standing.value !== 'confirmed') await confirm();
+    if (standing.value !== 'confirmed' || (await isCookieInDoubt())) await confirm();
     if (standing.value === 'expired') throw new ApiError('signed_out', 401, '', 'the sign-in has run out');
     return ownerKey(me.value) === owner;
   }
@@ -118,11 +121,14 @@ export const useSession = defineStore('session', () => {
     onAnswer: (answer: Answer) => void = () => undefined,
   ): Promise<Answer> {
     return withUploadLock(async () => {
+      // A phone that keeps nothing can sign in all the same.
+      await noteCookieInDoubt(true).catch(() => undefined);
       const answer = await ask();
       onAnswer(answer);
       if (!answer.me) throw new ApiError('signed_out', 200, '', 'the server did not say who is signed in');
       await noteSignOutOwed(false);
       await settle(answer.me, claim);
+      await noteCookieInDoubt(false);
       return answer;
     });
   }

@@ -32,3 +32,20 @@ it('R8: runs timed as a guest go to one person, though the page ends in the midd
     pass(3_000),
   ]);
 });
+
+it.each([0, 1])(
+  'R8: of a sign-in whose answer broke off the cookie may be kept: nothing is sent under it (from tab %i)',
+  async (tab) => {
+    await runSchedule(code, school, 2, [
+      { do: 'open_tab', phone: 0, tab: 1 },
+      pass(3_000),
+      { do: 'weather', phone: 0, kind: 'off', seed: 0 },
+      { do: 'key', phone: 0, tab: 0, isOfAnotherKind: false },
+      pass(300),
+      { do: 'weather', phone: 0, kind: 'clear', seed: 0 },
+      { do: 'meet', phone: 0, fault: { kind: 'cut_answer', part: 0.97 } },
+      { do: 'sign_in', phone: 0, tab, who: 'ben', claim: false },
+      pass(20_000),
+    ]);
+  },
+);
