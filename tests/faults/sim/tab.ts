@@ -43,6 +43,7 @@ export class Tab {
   private readonly timers = new Set<number>();
   private readonly exchanges = new Set<Exchange>();
   private readonly databases: Closable[] = [];
+  private readonly liveQueries: { unsubscribe(): void }[] = [];
   private readonly disk;
   private readonly openedAt: number;
   private armed: { point: TabPoint; nth: number } | null = null;
@@ -83,6 +84,7 @@ export class Tab {
     for (const exchange of this.exchanges) exchange.leave();
     this.phone.locks.leave(this);
     this.phone.forget(this);
+    for (const query of this.liveQueries) query.unsubscribe();
     for (const database of this.databases) database.close();
   }
 
@@ -154,10 +156,22 @@ export class Tab {
       crypto: { getRandomValues: fillFrom(world.random), subtle: crypto.subtle },
       Date: PhoneDate,
       Math: Object.assign(Object.create(Math) as Math, { random: world.random }),
-      dexie: { Dexie: TabDexie, liveQuery },
+      dexie: { Dexie: TabDexie, liveQuery: (query: () => unknown) => this.liveQuery(query) },
     };
     const all: unknown = Object.create(globalThis, Object.getOwnPropertyDescriptors(globals));
     return { ...globals, globalThis: all, self: all };
+  }
+
+  /** Dexie's live queries outlive their databases; those of a tab end with it. */
+  private liveQuery(query: () => unknown) {
+    const observable = liveQuery(query);
+    return {
+      subscribe: (next: (found: unknown) => void) => {
+        const subscription = observable.subscribe(next);
+        this.liveQueries.push(subscription);
+        return subscription;
+      },
+    };
   }
 
   private fetch(path: string, init: RequestInit): Promise<Response> {
