@@ -30,13 +30,17 @@ export const useClasses = defineStore('classes', () => {
 
   /** Fetches the list. A failure leaves the kept one and says why in `error`. */
   async function load(): Promise<void> {
+    const { store } = session;
     isLoading.value = true;
     try {
       const { classes: fresh } = await api.getClasses();
+      // A change of account meanwhile: this answer is not the next one's.
+      if (!store || store !== session.store) return;
       error.value = null;
       sync.noteContact();
-      if (session.store) await keepClasses(session.store, fresh);
+      await keepClasses(store, fresh);
     } catch (cause) {
+      if (store !== session.store) return;
       if (!(cause instanceof ApiError)) throw cause;
       error.value = cause;
     } finally {

@@ -89,7 +89,11 @@ export const useSync = defineStore('sync', () => {
       idle_ms: () => (document.hidden ? null : session.isStaff ? DESK_IDLE_MS : FIELD_IDLE_MS),
     });
     schedule = mine;
-    void readMeta<number>(store, 'last_contact_wall_ms').then((at) => (lastContact_wall_ms.value ??= at ?? null));
+    void readMeta<number>(store, 'last_contact_wall_ms').then(
+      (at) => (lastContact_wall_ms.value ??= at ?? null),
+      // The store was closed by a change of account, or gives no answer: the schedule says which.
+      () => undefined,
+    );
     const watching = watchOutbox(store).subscribe((now) => {
       const isMore = now.waiting > waiting.value;
       waiting.value = now.waiting;

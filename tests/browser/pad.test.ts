@@ -178,7 +178,7 @@ describe('the tap pad', () => {
     await count(2).waitFor();
     await page.getByRole('button', { name: /^Stop/ }).tap();
     await page.waitForTimeout(200);
-    await page.getByRole('button', { name: 'End it' }).tap();
+    await page.getByRole('button', { name: 'End it', exact: true }).tap();
     expect((await captureOnDisk()).ended).toBe('held');
   });
 

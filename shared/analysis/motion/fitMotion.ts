@@ -5,8 +5,15 @@ import type { MotionData } from './motionData';
 import type { MotionFit } from './motionFit';
 import { motionSlopes, type Slopes } from './motionSlopes';
 import { losesMuch, lossRates, placesOf, shapeOf } from './motionUnknowns';
-import { alongSlopes, LARGEST_AMPLITUDE, moveWithin } from './moveWithin';
-import { isIntegrable, predictAveraged, predictIntegrated, type MotionEvent, type Questions } from './predictMotion';
+import { alongSlopes, LARGEST_AMPLITUDE, moveWithin, type Moved } from './moveWithin';
+import {
+  isIntegrable,
+  predictAveraged,
+  predictIntegrated,
+  type MotionEvent,
+  type Prediction,
+  type Questions,
+} from './predictMotion';
 import { setOut } from './setOut';
 import type { MotionStart } from './startMotion';
 
@@ -73,7 +80,7 @@ export function fitMotion(
     // Slopes need not be exact for a step to lead on; integrated ones cost five integrations, and are kept.
     const slopesBy = isIntegrated && losesMuch(values, places, rates) ? predict : averaged;
     if (slopesBy === averaged || step < 2) {
-      const base = slopesBy === predict ? prediction : averaged(values);
+      const base: Prediction | undefined = slopesBy === predict ? prediction : averaged(values);
       columns = (base && motionSlopes(values, places, base, slopesBy, data)) ?? columns;
     }
     if (!columns) return undefined;
@@ -82,7 +89,7 @@ export function fitMotion(
     if (!state) return undefined;
     const { mean, covariance } = state;
     const size = Math.max(...mean.map((v, i) => Math.abs(v - values[i]!) / Math.sqrt(covariance[i]![i]!)));
-    const moved =
+    const moved: Moved | undefined =
       isIntegrated && size < ALONG_SLOPES && mean[places.amplitude]! < LARGEST_AMPLITUDE
         ? { values: mean, prediction: alongSlopes(prediction, columns, values, mean, places) }
         : moveWithin(values, mean, places, predict);

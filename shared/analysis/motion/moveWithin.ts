@@ -2,13 +2,18 @@ import type { Places } from './motionUnknowns';
 import type { Slopes } from './motionSlopes';
 import type { Prediction } from './predictMotion';
 
+export interface Moved {
+  values: number[];
+  prediction: Prediction;
+}
+
 /** Steps towards the mean as far as the motion can be followed. */
 export function moveWithin(
   values: number[],
   mean: number[],
   places: Places,
   predict: (values: number[]) => Prediction | undefined,
-) {
+): Moved | undefined {
   const amplitude = values[places.amplitude]!;
   const largest = Math.min((amplitude + Math.PI) / 2, 2 * amplitude, LARGEST_AMPLITUDE);
   let share = 1;
