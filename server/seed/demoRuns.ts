@@ -137,6 +137,8 @@ const stringAndBob = (length_m: number): Rig => ({
   ...EMPTY_RIG,
   length_readings: [{ to: 'centre', um: micro(length_m) }],
   bob_diameter_um: 25_000,
+  // Steel.
+  bob_mass_mg: 64_000,
 });
 
 const pendulumOf = ({ length_m, amplitude_deg, keptPerSwing = 0.994 }: TapPlan): Pendulum => ({

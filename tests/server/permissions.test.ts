@@ -133,7 +133,11 @@ test.each([
 ] as const)('setting a run aside: %s gets %s', async (_who, key, expected) => {
   const item = runItem();
   must(await school.student.post('/api/sync', batch([item])));
-  const mate = () => joinStudent(server, school.ownClass.code, 1, `M${(people += 1)}`);
+  const mate = async () => {
+    // The class may have been given a new code above.
+    const { code } = must(await school.teacher.get(`/api/classes/${school.ownClass.id}`)).class;
+    return joinStudent(server, code, 1, `M${(people += 1)}`);
+  };
   const client = key === 'mate' ? await mate() : school[key];
   const aside = editItem(item.id, { kind: 'set_aside' }, 1, 'bob hit the stand');
   const [verdict] = must(await client.post('/api/sync', batch([aside]))).verdicts;
