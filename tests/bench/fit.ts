@@ -13,7 +13,7 @@ const scenario: Scenario = {
   how: { kind: 'tap', at: 'pass', swingsPerMark: 1, jitter: 0.035 },
   read: { swings: [0, 20, 39], u: 1 },
 };
-const WARM_UP = 100;
+const WARM_UP = 300;
 const MEASURED = 100;
 const FOR_SCIPY = 3;
 
