@@ -67,6 +67,8 @@ export async function isCookieInDoubt(): Promise<boolean> {
 }
 
 export async function noteCookieInDoubt(inDoubt: boolean): Promise<void> {
+  // Every write here is heard by all tabs, which then ask anew who is signed in.
+  if ((await isCookieInDoubt()) === inDoubt) return;
   if (inDoubt) await store.rows.put({ key: 'cookie_in_doubt', content: true });
   else await store.rows.delete('cookie_in_doubt');
 }

@@ -51,7 +51,13 @@ export const useSession = defineStore('session', () => {
       storageTrouble.value = cause instanceof Error ? cause.message : String(cause);
       return;
     }
-    watchRememberedMe().subscribe((who) => void followOtherTab(who));
+    let isFirst = true;
+    watchRememberedMe().subscribe((who) => {
+      // The first word is of what was read above, and may come after the server's answer.
+      const isKnown = isFirst && ownerKey(who) === ownerKey(me.value);
+      isFirst = false;
+      if (!isKnown) void followOtherTab(who);
+    });
     void withUploadLock(finishClaim).catch(() => undefined);
     void askTheServer();
   }
