@@ -12,7 +12,14 @@ const flag = (parts: Partial<Flag>): Flag => ({
   ...parts,
 });
 
-const CHOICES: Choice[] = ['leave_out_mark', 'insert_gap', 'keep_part', 'reread_as_half_swings', 'set_swings', 'keep_flagged'];
+const CHOICES: Choice[] = [
+  'leave_out_mark',
+  'insert_gap',
+  'keep_part',
+  'reread_as_half_swings',
+  'set_swings',
+  'keep_flagged',
+];
 
 it.each(CHOICES)('the edit made by %s is one the server takes', (choice) => {
   const change = editFor(flag({ seen: { from_mark: 0, to_mark: 11 } }), choice, 19);
