@@ -42,14 +42,12 @@ export function useMarkWalk<Point extends { mark: number; swing: number }>(
     go(to);
   }
 
-  function toSwing(swing: number) {
-    const nearest = points.value.reduce<number>(
-      (best, candidate, i) =>
-        Math.abs(candidate.swing - swing) < Math.abs((points.value[best]?.swing ?? Infinity) - swing) ? i : best,
-      0,
-    );
-    go(nearest);
+  /** To the first of the points whose place is nearest to `x`. */
+  function toNearest(x: number, place: (point: Point) => number) {
+    const away = points.value.map((candidate) => Math.abs(place(candidate) - x));
+    go(Math.max(away.indexOf(Math.min(...away)), 0));
   }
+  const toSwing = (swing: number) => toNearest(swing, (candidate) => candidate.swing);
 
-  return { at, point, onKey, toSwing };
+  return { at, point, onKey, toNearest, toSwing };
 }

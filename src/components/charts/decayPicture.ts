@@ -4,6 +4,7 @@ import type { AmplitudeDecay } from '@shared/analysis/pictures/amplitudeDecay';
 import { degrees } from '@shared/units/angle';
 import type { DecayRow } from './decayModel';
 import { paintBar, paintCurve, paintLine, paintMarker, paintShade } from './paint';
+import { runAxes } from './axes';
 
 /** Swings are counted in whole numbers. */
 const WHOLE_STEPS = [1, 2, 5, 10, 20, 50, 100, 200, 500, 1000, 2000, 5000];
@@ -20,23 +21,19 @@ export function decayPicture(
   const [first, last] = [Math.min(0, ...swings), Math.max(1, ...swings)];
   const top = Math.max(...all.map(({ amplitude, u }) => degrees(amplitude + 2 * u)));
   const room = 0.03 * (last - first);
-  const type = { tick_px: theme.rem * 0.8, name_px: theme.rem * 0.8 };
+  const axes = runAxes(theme);
   return {
     x: {
-      ...type,
+      ...axes.x,
       range: [first - room, last + room],
       label: names.x,
-      size_px: theme.rem * 1.8,
-      grid: false,
       steps: WHOLE_STEPS,
       tickText: String,
     },
     y: {
-      ...type,
+      ...axes.y,
       range: [0, Math.min(1.06 * top, 190)],
       label: names.y,
-      size_px: theme.rem * 2.9,
-      grid: true,
     },
     paint: (brush) => {
       const edge = (by: number) =>

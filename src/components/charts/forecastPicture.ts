@@ -2,6 +2,7 @@ import type { ChartTheme } from '@/composables/chartTheme';
 import type { Picture } from '@/composables/useChart';
 import type { ForecastPoint } from './forecastModel';
 import { paintCurve, paintLine, paintMarker } from './paint';
+import { runAxes } from './axes';
 
 /** Amplitude over time as foreseen: a line to the end of the plan, dashes on to the swings needed. */
 export function forecastPicture(
@@ -12,10 +13,10 @@ export function forecastPicture(
 ): Picture {
   const last = points.at(-1)!.time_s;
   const top = points[0]!.amplitude_deg;
-  const type = { tick_px: theme.rem * 0.8, name_px: theme.rem * 0.8 };
+  const axes = runAxes(theme);
   return {
-    x: { ...type, range: [-0.03 * last, 1.03 * last], label: names.x, size_px: theme.rem * 1.8, grid: false },
-    y: { ...type, range: [0, 1.15 * top], label: names.y, size_px: theme.rem * 2.9, grid: true },
+    x: { ...axes.x, range: [-0.03 * last, 1.03 * last], label: names.x },
+    y: { ...axes.y, range: [0, 1.15 * top], label: names.y },
     paint: (brush) => {
       const place = ({ time_s, amplitude_deg }: ForecastPoint) => [brush.x(time_s), brush.y(amplitude_deg)] as const;
       const within = points.filter(({ swing }) => swing <= planned);

@@ -3,6 +3,7 @@ import type { Brush, Picture } from '@/composables/useChart';
 import { degrees } from '@shared/units/angle';
 import type { MotionMark, MotionModel, Stretch } from './motionModel';
 import { paintCurve, paintLine, paintMarker, paintShade } from './paint';
+import { runAxes, withMinus } from './axes';
 
 interface Parts {
   model: MotionModel;
@@ -21,19 +22,17 @@ export function motionPicture(
   theme: ChartTheme,
 ): Picture {
   const reach = 1.12 * model.top[of];
-  const type = { tick_px: theme.rem * 0.8, name_px: theme.rem * 0.8 };
+  const axes = runAxes(theme);
   const onMark = (mark: MotionMark) => (of === 'angle' ? mark.angle_deg : mark.rate_deg_s);
   const [from, to] = stretch.range_s;
   const room = 0.015 * (to - from);
   return {
-    x: { ...type, range: [from - room, to + room], label: names.x, size_px: theme.rem * 1.8, grid: false },
+    x: { ...axes.x, range: [from - room, to + room], label: names.x },
     y: {
-      ...type,
+      ...axes.y,
       range: [-reach, reach],
       label: names.y,
-      size_px: theme.rem * 2.9,
-      grid: true,
-      tickText: (tick) => (tick < 0 ? `−${-tick}` : String(tick)),
+      tickText: withMinus,
     },
     paint: (brush) => {
       paintLine(brush, [brush.left, brush.y(0)], [brush.left + brush.width, brush.y(0)], {

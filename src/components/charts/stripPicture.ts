@@ -2,6 +2,7 @@ import type { Brush, Picture } from '@/composables/useChart';
 import type { ChartTheme } from '@/composables/chartTheme';
 import { paintCurve, paintLine, paintMarker } from './paint';
 import { FLAG_SHAPES, largestBow_ms, stripReach_ms, type StripPoint } from './residualStrip';
+import { runAxes, withMinus } from './axes';
 
 interface Strip {
   points: StripPoint[];
@@ -25,25 +26,20 @@ export function stripPicture(
   const reach = stripReach_ms(strip.points, strip.jitter_s, largestBow_ms(strip.bows_ms) ?? 0);
   const swings = strip.points.map((point) => point.swing);
   const last = Math.max(1, ...swings);
-  const type = { tick_px: theme.rem * 0.8, name_px: theme.rem * 0.8 };
+  const axes = runAxes(theme);
   return {
     x: {
-      ...type,
+      ...axes.x,
       range: [Math.min(0, ...swings) - last * 0.03, last * 1.03],
       label: names.x,
-      size_px: theme.rem * 1.8,
-      grid: false,
       steps: WHOLE_STEPS,
       tickText: String,
     },
     y: {
-      ...type,
+      ...axes.y,
       range: [-reach, reach],
       label: names.y,
-      size_px: theme.rem * 2.9,
-      grid: true,
-      // A true minus sign, and no grouping.
-      tickText: (tick) => (tick < 0 ? `−${-tick}` : String(tick)),
+      tickText: withMinus,
     },
     paint: (brush) => {
       paintBand(brush, strip.jitter_s);
